@@ -1,0 +1,63 @@
+/** Shapes that many endpoints share. */
+import * as z from 'zod/v4';
+
+export const Problem = z.object({
+  type: z.string(),
+  title: z.string(),
+  status: z.int(),
+  detail: z.string(),
+  errors: z.array(z.object({ path: z.string(), message: z.string() })).optional(),
+});
+export type Problem = z.infer<typeof Problem>;
+
+/** One line of text: no control characters, trimmed. */
+export const line = (max: number, min = 0) =>
+  z
+    .string()
+    .trim()
+    .min(min, min === 1 ? 'Nothing was given: this is needed.' : undefined)
+    .max(max, `Longer than ${max} characters: shorten it.`)
+    .regex(/^[^\u0000-\u001f\u007f]*$/u, 'Has a control character: one line of plain text is needed.');
+
+/** Several lines of text. */
+export const prose = (max: number, min = 0) =>
+  z
+    .string()
+    .transform((s) => s.replace(/\r\n?/g, '\n').trim())
+    .pipe(
+      z
+        .string()
+        .min(min, min === 1 ? 'Nothing was given: this is needed.' : undefined)
+        .max(max, `Longer than ${max} characters: shorten it.`)
+        .regex(/^[^\u0000-\u0008\u000b-\u001f\u007f]*$/u, 'Has a control character: plain text is needed.'),
+    );
+
+export const Email = z
+  .string()
+  .trim()
+  .toLowerCase()
+  .max(190, 'Longer than 190 characters: shorten it.')
+  .pipe(z.email('Not an e-mail address: something like name@example.org is needed.'));
+
+/** Internal keys as they stand in addresses. */
+export const Id = z.coerce.number().int().positive().max(Number.MAX_SAFE_INTEGER);
+
+export const TicketNumber = z
+  .string()
+  .trim()
+  .regex(/^\d{4}-\d{4,6}$/, 'Not a ticket number: four digits, a dash, four or more digits, like 2612-0047.');
+
+export const DateOnly = z.iso.date('Not a date: year-month-day is needed, like 2026-12-24.');
+export const Moment = z.iso.datetime();
+
+export const Money = z.object({ amount: z.int(), currency: z.string().length(3) });
+
+/** `?limit&cursor&sort` of every list. The cursor is opaque. */
+export const ListQuery = z.object({
+  limit: z.coerce.number().int().min(1).max(200).default(50),
+  cursor: z.string().max(200).optional(),
+  sort: z.string().max(40).optional(),
+});
+
+export const listOf = <T extends z.ZodType>(item: T) =>
+  z.object({ items: z.array(item), next: z.string().nullable() });

@@ -1,0 +1,57 @@
+/**
+ * What a fault note says: four sections of structured text. The shape is our own and closed, so that stored
+ * notes stay readable whatever editor wrote them; contracts/faults.ts holds its schema with limits.
+ */
+
+export const SECTIONS = ['symptom', 'cause', 'proof', 'repair'] as const;
+export type Section = (typeof SECTIONS)[number];
+
+export type Mark = { type: 'bold' } | { type: 'italic' } | { type: 'code' } | { type: 'link'; attrs: { href: string } };
+
+export type Inline =
+  | { type: 'text'; text: string; marks?: Mark[] }
+  | { type: 'hardBreak' }
+  /** A part reference as a chip. */
+  | { type: 'partRef'; attrs: { ref: string } };
+
+export type Block =
+  | { type: 'paragraph'; content?: Inline[] }
+  | { type: 'bulletList' | 'orderedList'; content: { type: 'listItem'; content: Block[] }[] }
+  /** A reading copied from a ticket's bench sheet: what was measured, not a link to it. */
+  | {
+      type: 'reading';
+      attrs: { from: string; to: string; position: string; typed: string; expected: string | null };
+    }
+  /** A photo of the ticket or board, by its public id. */
+  | { type: 'photo'; attrs: { id: string; caption: string } }
+  | { type: 'caution'; content?: Inline[] };
+
+export type FaultBody = Record<Section, Block[]>;
+
+export const emptyBody = (): FaultBody => ({ symptom: [], cause: [], proof: [], repair: [] });
+
+function inlineWords(content: Inline[] | undefined): string {
+  return (content ?? [])
+    .map((n) => (n.type === 'text' ? n.text : n.type === 'partRef' ? n.attrs.ref : ' '))
+    .join('');
+}
+
+function blockWords(block: Block): string {
+  switch (block.type) {
+    case 'paragraph':
+    case 'caution':
+      return inlineWords(block.content);
+    case 'bulletList':
+    case 'orderedList':
+      return block.content.map((item) => item.content.map(blockWords).join(' ')).join(' ');
+    case 'reading':
+      return `${block.attrs.from} ${block.attrs.to} ${block.attrs.position} ${block.attrs.typed}`;
+    case 'photo':
+      return block.attrs.caption;
+  }
+}
+
+/** The plain words of a section, for the index and for previews. */
+export function sectionWords(blocks: readonly Block[]): string {
+  return blocks.map(blockWords).join(' ').replace(/\s+/g, ' ').trim();
+}
