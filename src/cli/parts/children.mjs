@@ -22,7 +22,7 @@ export function manageChildren(folder, runId) {
   let ending = false;
 
   const save = () =>
-    writeWhole(record, JSON.stringify({ runId, children: living.map(described) }, null, 2));
+    writeWhole(record, JSON.stringify({ runId, children: living.map(described) }, null, 2), 0o600);
 
   /** Start a program; its output goes to `log`, or to the terminal when there is none. */
   function start(name, command, args, { env = {}, cwd, log, grace = 10_000, input } = {}) {
@@ -87,7 +87,8 @@ export async function endGroup(group, grace) {
   }
 }
 
-async function endPids(pids, grace = 5_000) {
+/** The same for single processes, by number; each is watched by who it was when asked. */
+export async function endPids(pids, grace = 5_000) {
   const records = pids.map(identify).filter(Boolean);
   for (const { pid } of records) signal(pid, 'SIGTERM');
   const until = Date.now() + grace;

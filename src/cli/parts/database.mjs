@@ -7,7 +7,7 @@ import { setTimeout as pause } from 'node:timers/promises';
 import { findCommand } from './commands.mjs';
 import { freshLog, tail, writeWhole } from './files.mjs';
 import { loopback, tryPort } from './ports.mjs';
-import { endGroup } from './children.mjs';
+import { endPids } from './children.mjs';
 import { withArgument } from './process-table.mjs';
 import { Stop } from './say.mjs';
 
@@ -18,7 +18,7 @@ export async function makeDatabaseFolder(children, folder) {
   for (const name of readdirSync(folder))
     if (name.startsWith('mariadb.making-')) rmSync(`${folder}/${name}`, { recursive: true });
   const place = `${folder}/mariadb`;
-  if (existsSync(`${place}/mysql`)) return;
+  if (existsSync(`${place}/mysql`)) return 'there';
   rmSync(place, { recursive: true, force: true });
   const making = `${folder}/mariadb.making-${process.pid}`;
   mkdirSync(making, { mode: 0o700 });
@@ -142,5 +142,5 @@ function greets(port) {
 
 /** A server left on these very files would hold their lock: end it first. */
 async function endStranger(argument) {
-  for (const pid of withArgument(argument)) await endGroup(pid, 30_000);
+  await endPids(withArgument(argument), 30_000);
 }

@@ -10,7 +10,7 @@ import { Stop } from './say.mjs';
 /**
  * Take the lock of a folder. Returns `{runId, stale, release}`; `stale` is the record of a run that
  * ended without giving its lock back.
- * @throws Stop when another run holds it
+ * @throws Stop (with `alreadyRunning`) when another run holds it
  */
 export async function takeLock(folder, file, purpose) {
   const path = `${folder}/${file}`;
@@ -18,10 +18,12 @@ export async function takeLock(folder, file, purpose) {
   const earlier = readJson(path, undefined);
   if (!socket || stillLives(earlier)) {
     socket?.close();
-    throw new Stop(
+    const stop = new Stop(
       `${purpose} is already running here${earlier ? ` (process ${earlier.pid})` : ''}: ` +
         'use that one, or end it with Ctrl-C in its terminal first.',
     );
+    stop.alreadyRunning = true;
+    throw stop;
   }
   const runId = randomBytes(12).toString('hex');
   writeWhole(path, JSON.stringify({ ...identify(process.pid), runId }, null, 2));

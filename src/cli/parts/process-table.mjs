@@ -68,7 +68,13 @@ export const markedWith = (runId) =>
     const mark = read(`/proc/${pid}/environ`)
       ?.split('\0')
       .find((entry) => entry.startsWith(`${markName}=`));
-    return mark !== undefined && mark.slice(markName.length + 1).split(':').includes(runId);
+    return (
+      mark !== undefined &&
+      mark
+        .slice(markName.length + 1)
+        .split(':')
+        .includes(runId)
+    );
   });
 
 /** Living processes with exactly this argument on their command line. */

@@ -24,7 +24,9 @@ const OVER_RANGE = new RegExp(
   `^(?:\\.?[oO0]\\.?[lL]\\.?(?: ?(?:${PREFIX})?${UNIT}?)?|∞ ?(?:(?:${PREFIX})?${UNIT})?)$`,
 );
 const INFIX = new RegExp(`^(\\d*)(R|r|${PREFIX})(\\d+)${UNIT}?$`);
-const SUFFIX = new RegExp(`^([\\d., ]*[\\d.,])(?:[eE]([+-]?\\d+))? ?(?:(${PREFIX})? ?${UNIT}?|R|r)$`);
+const SUFFIX = new RegExp(
+  `^([\\d., ]*[\\d.,])(?:[eE]([+-]?\\d+))? ?(?:(${PREFIX})? ?${UNIT}?|R|r)$`,
+);
 const EITHER_E = /^(\d+)E(\d+)$/;
 
 /**
@@ -86,7 +88,8 @@ function parseValue(text: string): ResistanceReading {
     };
   }
   const suffix = SUFFIX.exec(text);
-  if (!suffix) return refuse(`"${text}" given, a resistance such as 1k6, 4M7, 0R33 or OL is needed`);
+  if (!suffix)
+    return refuse(`"${text}" given, a resistance such as 1k6, 4M7, 0R33 or OL is needed`);
   const [, number = '', power = '0', prefix = ''] = suffix;
   const decimal = readDecimal(number.trim());
   if (decimal.ok) return toOhms(text, decimal, prefix, Number(power));

@@ -1,0 +1,148 @@
+/** Turns a route's description and a handler into an Astro endpoint: parse → authorise → call → answer. */
+import type { APIContext, APIRoute } from 'astro';
+import type { Logger } from 'pino';
+import type { AnswerOf, BodyOf, ParamsOf, QueryOf, Route } from '@/contracts/route';
+import type { Permission } from '@/domain/people';
+import { grant, type Actor, type CustomerActor, type Granted } from '../auth/actor';
+import { refuse, type Outcome, type Refusal } from '../refusal';
+import { runtime, type Runtime } from '../runtime';
+import { closeRepeatable, openRepeatable } from './idempotency';
+import { fieldErrors, problemResponse } from './problem';
+import { readJson } from './read-body';
+
+type ActorOf<R extends Route> = R['who'] extends Permission
+  ? Granted<R['who']>
+  : R['who'] extends 'customer'
+    ? CustomerActor
+    : Actor | null;
+
+export type Call<R extends Route> = {
+  actor: ActorOf<R>;
+  params: ParamsOf<R>;
+  query: QueryOf<R>;
+  body: BodyOf<R>;
+  /** The version in `If-Match`; 0 where the route is not versioned. */
+  version: number;
+  now: Date;
+  app: Runtime;
+  log: Logger;
+  requestId: string;
+  request: Request;
+  /** Where the request came from, for rate limits. */
+  address: string;
+};
+/** A JSON value with its version, or a finished response (images, streams, CSV). */
+export type Answer<R extends Route> = { json: AnswerOf<R>; version?: number; headers?: HeadersInit } | Response;
+type Handler<R extends Route> = (call: Call<R>) => Promise<Outcome<Answer<R>>>;
+
+const signedOut = refuse('signed-out', 'You are not signed in, or no longer: sign in first.');
+
+function authorise(route: Route, actor: Actor | null): { actor: Actor | null } | Refusal {
+  if (route.who === 'public') return { actor };
+  if (!actor) return signedOut;
+  if (route.who === 'customer')
+    return actor.kind === 'customer'
+      ? { actor }
+      : refuse('not-allowed', 'This is the customer’s own page: staff use the ticket.');
+  return grant(actor, route.who) ? { actor } : refuse('not-allowed', 'Your role or token may not do this.');
+}
+
+function parse(schema: Route['body'], value: unknown, bad: 'bad-request' | 'invalid'): Outcome<unknown> {
+  if (!schema) return { ok: true, value: undefined };
+  const parsed = schema.safeParse(value);
+  if (parsed.success) return { ok: true, value: parsed.data };
+  const errors = fieldErrors(parsed.error.issues);
+  return refuse(bad, errors[0] ? `${errors[0].path || 'body'}: ${errors[0].message}` : 'Not valid.', { errors });
+}
+
+function readVersion(route: Route, request: Request): Outcome<number> {
+  if (!route.versioned) return { ok: true, value: 0 };
+  const header = request.headers.get('if-match');
+  const version = /^(?:W\/)?"?(\d{1,10})"?$/.exec(header ?? '')?.[1];
+  return version
+    ? { ok: true, value: Number(version) }
+    : refuse('version-needed', 'If-Match is missing or not a version: send the ETag you read.');
+}
+
+async function answer(route: Route, context: APIContext): Promise<Response | { call: Call<Route> }> {
+  const { actor: who, requestId, log, address } = context.locals;
+  const allowed = authorise(route, who);
+  if ('ok' in allowed) return problemResponse(allowed);
+  const params = parse(route.params, context.params, 'invalid');
+  // A malformed key in the address names nothing: the same answer as for one that is not there.
+  if (!params.ok) return problemResponse(refuse('absent', 'There is no such thing, or it is not open to you.'));
+  const query = parse(route.query, Object.fromEntries(context.url.searchParams), 'invalid');
+  if (!query.ok) return problemResponse(query);
+  const version = readVersion(route, context.request);
+  if (!version.ok) return problemResponse(version);
+  let body: unknown;
+  if (route.body) {
+    const raw = await readJson(context.request, route.bodyLimit ?? 262_144);
+    if (!raw.ok) return problemResponse(raw);
+    const parsed = parse(route.body, raw.value, 'invalid');
+    if (!parsed.ok) return problemResponse(parsed);
+    body = parsed.value;
+  }
+  const call = {
+    actor: allowed.actor,
+    params: params.value,
+    query: query.value,
+    body,
+    version: version.value,
+    now: new Date(),
+    app: await runtime(),
+    log,
+    requestId,
+    request: context.request,
+    address,
+  };
+  return { call: call as Call<Route> };
+}
+
+function toResponse(route: Route, value: Answer<Route>): Response {
+  if (value instanceof Response) return value;
+  const headers = new Headers(value.headers);
+  if (value.version !== undefined) headers.set('etag', `"${value.version}"`);
+  if (route.status === 204) return new Response(null, { status: 204, headers });
+  headers.set('content-type', 'application/json');
+  return new Response(JSON.stringify(value.json), { status: route.status, headers });
+}
+
+/** The endpoint of a route. */
+export function serve<R extends Route>(route: R, handler: Handler<R>): APIRoute {
+  return async (context) => {
+    const ready = await answer(route, context);
+    if (ready instanceof Response) return ready;
+    const { call } = ready;
+    const key = route.repeatable ? call.request.headers.get('idempotency-key') : null;
+    const userId = (call.actor as Actor | null)?.id ?? 0;
+    if (key === null) {
+      const outcome = await handler(call as unknown as Call<R>);
+      return outcome.ok ? toResponse(route, outcome.value as Answer<Route>) : problemResponse(outcome);
+    }
+    const { db } = call.app;
+    const opened = await openRepeatable(db, userId, key, context.url.pathname, call.body, call.now);
+    if (opened !== 'first')
+      return 'ok' in opened
+        ? problemResponse(opened)
+        : new Response(opened.answer || null, {
+            status: opened.status,
+            headers: {
+              'idempotency-replayed': 'true',
+              ...(opened.answer ? { 'content-type': 'application/json' } : {}),
+              ...(opened.etag ? { etag: opened.etag } : {}),
+            },
+          });
+    let response: Response | null = null;
+    try {
+      const outcome = await handler(call as unknown as Call<R>);
+      response = outcome.ok ? toResponse(route, outcome.value as Answer<Route>) : problemResponse(outcome);
+      return response;
+    } finally {
+      const kept = response?.ok
+        ? { status: response.status, answer: await response.clone().text(), etag: response.headers.get('etag') }
+        : null;
+      await closeRepeatable(db, userId, key, kept);
+    }
+  };
+}
