@@ -1,5 +1,5 @@
 // The local stand-ins for the object store and the mail service.
-import { existsSync, mkdirSync } from 'node:fs';
+import { mkdirSync } from 'node:fs';
 import { connect } from 'node:net';
 import { setTimeout as pause } from 'node:timers/promises';
 import { freshLog, tail } from './files.mjs';
@@ -39,7 +39,6 @@ export async function startMailCatcher(children, folder, ports) {
 }
 
 function startFake(children, folder, name, short, script, options) {
-  if (!existsSync(script)) throw new Stop(`The ${name} is missing: ${script} is not there.`);
   mkdirSync(options.data, { recursive: true });
   const log = freshLog(`${folder}/logs`, short);
   const words = Object.entries(options).flatMap(([key, value]) => [`--${key}`, String(value)]);
