@@ -1,12 +1,15 @@
 // `node src/cli/dev-services.mjs`: MariaDB, object store and mail catcher for development, with
 // their settings in `.data/dev.env`. Runs until Ctrl-C; a second one says where the first is.
+// `--without store,mail` (or `database`) leaves some out.
 import { existsSync, mkdirSync, readFileSync, rmSync } from 'node:fs';
+import { parseArgs } from 'node:util';
 import { writeWhole } from './parts/files.mjs';
 import { cacheFolder } from './parts/place.mjs';
 import { oneRun } from './parts/run.mjs';
 import { say, sayWhy } from './parts/say.mjs';
 import { installServices, startServices } from './parts/services.mjs';
 
+const { values: options } = parseArgs({ options: { without: { type: 'string', default: '' } } });
 const folder = `${cacheFolder}/dev`;
 const envFile = `${cacheFolder}/dev.env`;
 mkdirSync(`${folder}/logs`, { recursive: true });
@@ -19,7 +22,10 @@ const asLines = (env) =>
 async function work({ children, untilEnd, ready }) {
   const given = { PORT: process.env.PORT ?? '4321', NODE_ENV: 'development', LOG_LEVEL: 'debug' };
   await installServices(children, given);
-  const { env, ports } = await startServices(children, folder, { given });
+  const { env, ports } = await startServices(children, folder, {
+    given,
+    without: options.without.split(','),
+  });
   const controls = {
     S3_CONTROL_URL: `http://127.0.0.1:${ports.storeControl}`,
     MAIL_CONTROL_URL: `http://127.0.0.1:${ports.mailControl}`,

@@ -19,17 +19,19 @@ export async function installServices(children, given) {
 /**
  * Start the services and answer `{env, ports, running}`: the app's environment, the ports in use,
  * and the started services as `{name, entry, again}` where `again()` starts one anew.
+ * `without` names services (database, store, mail) to leave out although nobody brings them.
  */
-export async function startServices(children, folder, { given, startOver, lasting }) {
+export async function startServices(children, folder, { given, startOver, lasting, without = [] }) {
   const ports = await keepPorts(folder, servicePorts);
   const secrets = keepSecrets(folder);
-  const brought = broughtAlong(given);
+  const leftOut = broughtAlong(given);
+  for (const name of without) leftOut[name] = true;
   const running = [];
   const add = (title, where, again) =>
     step(`${title} on ${where}`, async () => {
       running.push({ name: title, entry: await again(), again });
     });
-  if (!brought.database) {
+  if (!leftOut.database) {
     await step('Database files', () => makeDatabaseFolder(children, folder));
     let fresh = startOver;
     await add('MariaDB', `port ${ports.database}`, () => {
@@ -38,11 +40,11 @@ export async function startServices(children, folder, { given, startOver, lastin
       return startDatabase(children, folder, ports.database, secrets, options);
     });
   }
-  if (!brought.store)
+  if (!leftOut.store)
     await add('Object store', `port ${ports.store}`, () =>
       startStore(children, folder, ports, secrets),
     );
-  if (!brought.mail)
+  if (!leftOut.mail)
     await add('Mail catcher', `ports ${ports.smtp} and ${ports.inbox}`, () =>
       startMailCatcher(children, folder, ports),
     );
