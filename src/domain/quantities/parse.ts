@@ -63,11 +63,11 @@ function tidy(text: string): string {
 
 function parseBound(text: string): ResistanceReading {
   const bound = parseValue(text);
-  if (!bound.ok || bound.kind !== 'value') {
-    return bound.ok || !bound.could
-      ? bound
-      : { ...bound, could: bound.could.map((one) => `>${one}`) };
+  if (!bound.ok) {
+    if (!bound.could) return bound;
+    return { ...bound, could: bound.could.map((one) => (one === 'OL' ? one : `>${one}`)) };
   }
+  if (bound.kind === 'over-range') return bound;
   if (bound.ohms === 0) return refuse('">0" given, the top of the range is needed, such as >60M');
   return { ok: true, kind: 'over-range', above: bound.ohms };
 }
