@@ -1,0 +1,127 @@
+// What `npm start` does, step by step, until the shop is open.
+import { existsSync, rmSync, writeFileSync } from 'node:fs';
+import { startApp } from './app.mjs';
+import { ensureBuild, presentBuild } from './build.mjs';
+import { missingPackages } from './commands.mjs';
+import { needRoom, roomToInstall, roomToRun } from './disk.mjs';
+import { freshLog, tail } from './files.mjs';
+import { ensurePackages, packagesAreMissing } from './packages.mjs';
+import { dataFolder, root } from './place.mjs';
+import { loopback, tryPort } from './ports.mjs';
+import { oneRun } from './run.mjs';
+import { say, seconds, sayWhy, step, Stop } from './say.mjs';
+import { databaseCommands, installServices, startServices } from './services.mjs';
+import { broughtAlong } from './settings.mjs';
+import { keepRunning } from './supervise.mjs';
+
+/** Open the shop and keep it open until asked to end. Answers the exit code. */
+export async function openShop({ dev }) {
+  const since = performance.now();
+  if (existsSync(`${root}/.env`)) process.loadEnvFile(`${root}/.env`);
+  const given = { ...process.env, ...(dev ? { NODE_ENV: 'development' } : {}) };
+  say('Meterwright');
+  try {
+    const folder = dataFolder();
+    return await oneRun({ folder, lockFile: 'start.lock', purpose: 'Meterwright' }, (run) =>
+      work({ ...run, given, dev, since }),
+    );
+  } catch (error) {
+    sayWhy(error);
+    return 1;
+  }
+}
+
+async function work({ children, folder, given, dev, since, untilEnd, ready }) {
+  const port = await wantedPort(given);
+  await step('Free space', () => checkRoom(folder, given));
+  await installServices(children, given);
+  await step('Packages (npm ci)', () => ensurePackages(children));
+  let entry;
+  if (!dev) {
+    const { there } = presentBuild();
+    await step('Build', async () => {
+      entry = await ensureBuild(children);
+      return there ? 'there' : 'built';
+    });
+  }
+  const startOver = beginFirstRun(folder, given);
+  const { env, running } = await startServices(children, folder, { given, startOver });
+  await step('Tables', () => script(children, 'migrate', env));
+  if (env.DEMO === '1') await step('Demo shop', () => script(children, 'seed', env));
+  finishFirstRun(folder);
+  const again = () => startApp(children, folder, env, entry);
+  await step(`Serving on port ${port}`, async () => {
+    if ((await tryPort(port)) === undefined) throw portTaken(port);
+    running.push({ name: 'The app', entry: await again(), again });
+  });
+  ready();
+  sayOpen(env, since);
+  let ending = false;
+  const watched = running.map((service) => keepRunning(service, () => ending));
+  await Promise.race([untilEnd, ...watched]);
+  ending = true;
+}
+
+async function wantedPort(given) {
+  const port = Number(given.PORT || 4321);
+  if (!Number.isInteger(port) || port < 1 || port > 65535)
+    throw new Stop(`PORT is "${given.PORT}"; a number from 1 to 65535 is needed.`);
+  if ((await tryPort(port)) === undefined) throw portTaken(port);
+  return port;
+}
+
+const portTaken = (port) =>
+  new Stop(
+    `Port ${port} is taken: end the program that listens on ${loopback}:${port}, or choose another port, for example: PORT=${port + 1} npm start`,
+  );
+
+function checkRoom(folder, given) {
+  const programs = broughtAlong(given).database ? [] : missingPackages(databaseCommands);
+  const first = packagesAreMissing() || programs.length > 0;
+  const needed = first ? roomToInstall : roomToRun;
+  needRoom(root, needed);
+  return needRoom(folder, needed);
+}
+
+const unfinished = (folder) => `${folder}/first-run-unfinished`;
+
+/**
+ * The first run fills an empty database. Until it is done a note says so: found again, it means
+ * that the filling was cut off and starts over (nobody can have worked in that shop yet).
+ */
+function beginFirstRun(folder, given) {
+  if (broughtAlong(given).database) return false;
+  if (!existsSync(`${folder}/mariadb`)) writeFileSync(unfinished(folder), '');
+  if (!existsSync(unfinished(folder))) return false;
+  for (const name of ['object-store', 'mail-catcher'])
+    rmSync(`${folder}/${name}`, { recursive: true, force: true });
+  return true;
+}
+
+const finishFirstRun = (folder) => rmSync(unfinished(folder), { force: true });
+
+/** Run `src/cli/<name>.ts`. @throws Stop with its last lines */
+async function script(children, name, env) {
+  const log = freshLog(`${children.folder}/logs`, name);
+  const words = ['--import', 'tsx', `${root}/src/cli/${name}.ts`];
+  const code = await children.run(name, process.execPath, words, { cwd: root, log, env });
+  if (code !== 0)
+    throw new Stop(
+      `src/cli/${name}.ts ended with ${code}: the last lines say why. Put that right, then start again.`,
+      tail(log, 25),
+    );
+}
+
+function sayOpen(env, since) {
+  const lines = [
+    ['Open at', env.PUBLIC_ORIGIN],
+    ...(env.MAIL_INBOX_URL ? [['Mail it sends', env.MAIL_INBOX_URL]] : []),
+  ];
+  if (env.DEMO === '1') {
+    const people = ['counter', 'tech', 'senior', 'owner'];
+    lines.push(['Sign in as', people.map((who) => `${who}@meterwright.example`).join(', ')]);
+    lines.push(['Password', 'bench-demo-2612']);
+  }
+  say(`\nThe shop is open after ${seconds(since)}. Ctrl-C ends everything started here.\n`);
+  for (const [what, text] of lines) say(`  ${what.padEnd(14)} ${text}`);
+}
