@@ -10,7 +10,19 @@ export default defineConfig({
   integrations: [react(), mdx()],
   // Origins are checked in src/middleware.ts: behind the node adapter Astro's own check sees http://localhost.
   security: { checkOrigin: false },
-  experimental: { csp: { algorithm: 'SHA-256' } },
+  experimental: {
+    csp: {
+      algorithm: 'SHA-256',
+      directives: [
+        "default-src 'self'",
+        "img-src 'self' blob: data:",
+        "object-src 'none'",
+        "base-uri 'none'",
+        "form-action 'self'",
+        "frame-ancestors 'none'",
+      ],
+    },
+  },
   devToolbar: { enabled: false },
   telemetry: false,
   vite: {

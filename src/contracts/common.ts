@@ -17,7 +17,10 @@ export const line = (max: number, min = 0) =>
     .trim()
     .min(min, min === 1 ? 'Nothing was given: this is needed.' : undefined)
     .max(max, `Longer than ${max} characters: shorten it.`)
-    .regex(/^[^\u0000-\u001f\u007f]*$/u, 'Has a control character: one line of plain text is needed.');
+    .regex(
+      /^[^\u0000-\u001f\u007f]*$/u,
+      'Has a control character: one line of plain text is needed.',
+    );
 
 /** Several lines of text. */
 export const prose = (max: number, min = 0) =>
@@ -29,7 +32,10 @@ export const prose = (max: number, min = 0) =>
         .string()
         .min(min, min === 1 ? 'Nothing was given: this is needed.' : undefined)
         .max(max, `Longer than ${max} characters: shorten it.`)
-        .regex(/^[^\u0000-\u0008\u000b-\u001f\u007f]*$/u, 'Has a control character: plain text is needed.'),
+        .regex(
+          /^[^\u0000-\u0008\u000b-\u001f\u007f]*$/u,
+          'Has a control character: plain text is needed.',
+        ),
     );
 
 export const Email = z
@@ -45,7 +51,10 @@ export const Id = z.coerce.number().int().positive().max(Number.MAX_SAFE_INTEGER
 export const TicketNumber = z
   .string()
   .trim()
-  .regex(/^\d{4}-\d{4,6}$/, 'Not a ticket number: four digits, a dash, four or more digits, like 2612-0047.');
+  .regex(
+    /^\d{4}-\d{4,6}$/,
+    'Not a ticket number: four digits, a dash, four or more digits, like 2612-0047.',
+  );
 
 export const DateOnly = z.iso.date('Not a date: year-month-day is needed, like 2026-12-24.');
 export const Moment = z.iso.datetime();

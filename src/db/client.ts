@@ -37,7 +37,10 @@ const codeOf = (error: unknown): string | undefined => {
 export const isDuplicate = (error: unknown): boolean => codeOf(error) === 'ER_DUP_ENTRY';
 
 /** Runs a transaction again when MariaDB chose it as the victim of a deadlock. */
-export async function inTransaction<T>(db: Queryable, work: (tx: Queryable) => Promise<T>): Promise<T> {
+export async function inTransaction<T>(
+  db: Queryable,
+  work: (tx: Queryable) => Promise<T>,
+): Promise<T> {
   for (let tries = 1; ; tries++) {
     try {
       return await db.transaction((tx) => work(tx as unknown as Queryable));

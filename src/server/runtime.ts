@@ -32,7 +32,7 @@ async function open(): Promise<Runtime> {
     db,
     pool,
     sessions: sessionKeeper(db, settings.secureCookies),
-    limits: makeLimits(pool),
+    limits: makeLimits(pool, new URL(settings.databaseUrl).pathname.slice(1)),
     store,
     worker: null,
   };

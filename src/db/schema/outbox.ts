@@ -1,4 +1,13 @@
-import { char, index, int, mediumtext, mysqlTable, primaryKey, uniqueIndex, varchar } from 'drizzle-orm/mysql-core';
+import {
+  char,
+  index,
+  int,
+  mediumtext,
+  mysqlTable,
+  primaryKey,
+  uniqueIndex,
+  varchar,
+} from 'drizzle-orm/mysql-core';
 import { id, moment, ref } from '../columns';
 
 /** Work promised by a change and done after it: written in the change's transaction, taken by a worker. */
@@ -18,7 +27,10 @@ export const outbox = mysqlTable(
     lastError: varchar({ length: 500 }),
     createdAt: moment().notNull(),
   },
-  (t) => [uniqueIndex('outbox_once').on(t.onceKey), index('outbox_due').on(t.doneAt, t.deadAt, t.dueAt)],
+  (t) => [
+    uniqueIndex('outbox_once').on(t.onceKey),
+    index('outbox_due').on(t.doneAt, t.deadAt, t.dueAt),
+  ],
 );
 
 /** Answers kept for a day, so that a repeated POST with the same key gets the same answer. */

@@ -6,7 +6,11 @@
 export const SECTIONS = ['symptom', 'cause', 'proof', 'repair'] as const;
 export type Section = (typeof SECTIONS)[number];
 
-export type Mark = { type: 'bold' } | { type: 'italic' } | { type: 'code' } | { type: 'link'; attrs: { href: string } };
+export type Mark =
+  | { type: 'bold' }
+  | { type: 'italic' }
+  | { type: 'code' }
+  | { type: 'link'; attrs: { href: string } };
 
 export type Inline =
   | { type: 'text'; text: string; marks?: Mark[] }

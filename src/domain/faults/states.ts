@@ -14,7 +14,13 @@ export const FAULT_STATE_LABELS: Record<FaultState, string> = {
 const bench: readonly Role[] = ['technician', 'senior', 'owner'];
 const seniors: readonly Role[] = ['senior', 'owner'];
 
-type Rule = { label: string; from: readonly FaultState[]; to: FaultState; who: readonly Role[]; note?: string };
+type Rule = {
+  label: string;
+  from: readonly FaultState[];
+  to: FaultState;
+  who: readonly Role[];
+  note?: string;
+};
 
 const RULES = {
   submit: { label: 'Send to review', from: ['draft'], to: 'in-review', who: bench },
@@ -25,7 +31,12 @@ const RULES = {
     who: seniors,
     note: 'what is still missing',
   },
-  publish: { label: 'Publish', from: ['draft', 'in-review', 'retired'], to: 'published', who: seniors },
+  publish: {
+    label: 'Publish',
+    from: ['draft', 'in-review', 'retired'],
+    to: 'published',
+    who: seniors,
+  },
   retire: {
     label: 'Retire',
     from: ['published'],

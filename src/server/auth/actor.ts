@@ -28,10 +28,7 @@ declare const granted: unique symbol;
 export type Granted<P extends Permission> = StaffActor & { readonly [granted]: P };
 
 /** The proof that this actor holds the permission (and, with a token, its scope), or null. */
-export function grant<P extends Permission>(
-  actor: Actor | null,
-  permission: P,
-): Granted<P> | null {
+export function grant<P extends Permission>(actor: Actor | null, permission: P): Granted<P> | null {
   if (actor?.kind !== 'staff') return null;
   if (!roleMay(actor.role, permission)) return null;
   if (actor.scopes && !actor.scopes.includes(PERMISSIONS[permission].scope)) return null;

@@ -22,13 +22,13 @@ export type LimitName = keyof typeof WINDOWS;
 
 export type Limits = ReturnType<typeof makeLimits>;
 
-export function makeLimits(pool: Pool) {
+export function makeLimits(pool: Pool, databaseName: string) {
   const limiters = Object.fromEntries(
     Object.entries(WINDOWS).map(([name, w]) => [
       name,
       new RateLimiterMySQL({
         storeClient: pool.pool,
-        dbName: pool.pool.config.connectionConfig.database ?? '',
+        dbName: databaseName,
         tableName: 'rate_limits',
         tableCreated: true,
         keyPrefix: name,

@@ -38,7 +38,9 @@ export function newClaimCode(): string {
 /** Claim codes are short, so their hash is keyed with the app secret and bound to the ticket. */
 export function hashClaimCode(secret: string, ticketNumber: string, code: string): string {
   const plain = code.toUpperCase().replace(/[^0-9A-Z]/g, '');
-  return createHmac('sha256', key(secret, 'claim')).update(`${ticketNumber}:${plain}`).digest('hex');
+  return createHmac('sha256', key(secret, 'claim'))
+    .update(`${ticketNumber}:${plain}`)
+    .digest('hex');
 }
 
 export const sameHash = (a: string, b: string): boolean =>

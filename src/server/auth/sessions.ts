@@ -24,7 +24,8 @@ declare module 'lucia' {
 
 /** Hashes session ids on their way to the table, and gives the caller back the id it knows. */
 function hashing(inner: Adapter): Adapter {
-  const known = (session: DatabaseSession | null, id: string) => (session ? { ...session, id } : null);
+  const known = (session: DatabaseSession | null, id: string) =>
+    session ? { ...session, id } : null;
   return {
     deleteSession: (id) => inner.deleteSession(hashSecret(id)),
     deleteUserSessions: (userId) => inner.deleteUserSessions(userId),
@@ -45,21 +46,24 @@ export type SessionKeeper = ReturnType<typeof sessionKeeper>;
 
 /** Opens, reads and ends sessions. */
 export function sessionKeeper(db: Database, secureCookies: boolean) {
-  const lucia = new Lucia(hashing(new DrizzleMySQLAdapter(db, sessions, users) as unknown as Adapter), {
-    sessionExpiresIn: new TimeSpan(2, 'w'),
-    sessionCookie: {
-      name: COOKIE,
-      attributes: { secure: secureCookies, sameSite: 'lax', path: '/' },
+  const lucia = new Lucia(
+    hashing(new DrizzleMySQLAdapter(db, sessions, users) as unknown as Adapter),
+    {
+      sessionExpiresIn: new TimeSpan(2, 'w'),
+      sessionCookie: {
+        name: COOKIE,
+        attributes: { secure: secureCookies, sameSite: 'lax', path: '/' },
+      },
+      getSessionAttributes: (a) => ({ ticketId: a.ticketId }),
+      getUserAttributes: (a) => ({
+        email: a.email,
+        name: a.name,
+        role: a.role,
+        customerId: a.customerId,
+        disabledAt: a.disabledAt,
+      }),
     },
-    getSessionAttributes: (a) => ({ ticketId: a.ticketId }),
-    getUserAttributes: (a) => ({
-      email: a.email,
-      name: a.name,
-      role: a.role,
-      customerId: a.customerId,
-      disabledAt: a.disabledAt,
-    }),
-  });
+  );
 
   return {
     lucia,
@@ -72,7 +76,9 @@ export function sessionKeeper(db: Database, secureCookies: boolean) {
     },
 
     /** Who the cookie stands for, and a renewed cookie when half its life is over. */
-    async read(cookie: string | undefined): Promise<{ actor: Actor | null; renewed: string | null }> {
+    async read(
+      cookie: string | undefined,
+    ): Promise<{ actor: Actor | null; renewed: string | null }> {
       if (!cookie || cookie.length > 100) return { actor: null, renewed: null };
       const { user, session } = await lucia.validateSession(cookie);
       if (!user || user.disabledAt) return { actor: null, renewed: null };
@@ -80,7 +86,14 @@ export function sessionKeeper(db: Database, secureCookies: boolean) {
       if (user.role === 'customer') {
         if (user.customerId === null) return { actor: null, renewed: null };
         const { id, name, customerId } = user;
-        const actor: Actor = { kind: 'customer', id, name, role: 'customer', customerId, ticketId: session.ticketId };
+        const actor: Actor = {
+          kind: 'customer',
+          id,
+          name,
+          role: 'customer',
+          customerId,
+          ticketId: session.ticketId,
+        };
         return { actor, renewed };
       }
       const { id, name, email, role } = user;

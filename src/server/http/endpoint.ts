@@ -32,7 +32,8 @@ export type Call<R extends Route> = {
   address: string;
 };
 /** A JSON value with its version, or a finished response (images, streams, CSV). */
-export type Answer<R extends Route> = { json: AnswerOf<R>; version?: number; headers?: HeadersInit } | Response;
+export type Answer<R extends Route> =
+  { json: AnswerOf<R>; version?: number; headers?: HeadersInit } | Response;
 type Handler<R extends Route> = (call: Call<R>) => Promise<Outcome<Answer<R>>>;
 
 const signedOut = refuse('signed-out', 'You are not signed in, or no longer: sign in first.');
@@ -44,15 +45,25 @@ function authorise(route: Route, actor: Actor | null): { actor: Actor | null } |
     return actor.kind === 'customer'
       ? { actor }
       : refuse('not-allowed', 'This is the customer’s own page: staff use the ticket.');
-  return grant(actor, route.who) ? { actor } : refuse('not-allowed', 'Your role or token may not do this.');
+  return grant(actor, route.who)
+    ? { actor }
+    : refuse('not-allowed', 'Your role or token may not do this.');
 }
 
-function parse(schema: Route['body'], value: unknown, bad: 'bad-request' | 'invalid'): Outcome<unknown> {
+function parse(
+  schema: Route['body'],
+  value: unknown,
+  bad: 'bad-request' | 'invalid',
+): Outcome<unknown> {
   if (!schema) return { ok: true, value: undefined };
   const parsed = schema.safeParse(value);
   if (parsed.success) return { ok: true, value: parsed.data };
   const errors = fieldErrors(parsed.error.issues);
-  return refuse(bad, errors[0] ? `${errors[0].path || 'body'}: ${errors[0].message}` : 'Not valid.', { errors });
+  return refuse(
+    bad,
+    errors[0] ? `${errors[0].path || 'body'}: ${errors[0].message}` : 'Not valid.',
+    { errors },
+  );
 }
 
 function readVersion(route: Route, request: Request): Outcome<number> {
@@ -64,13 +75,17 @@ function readVersion(route: Route, request: Request): Outcome<number> {
     : refuse('version-needed', 'If-Match is missing or not a version: send the ETag you read.');
 }
 
-async function answer(route: Route, context: APIContext): Promise<Response | { call: Call<Route> }> {
+async function answer(
+  route: Route,
+  context: APIContext,
+): Promise<Response | { call: Call<Route> }> {
   const { actor: who, requestId, log, address } = context.locals;
   const allowed = authorise(route, who);
   if ('ok' in allowed) return problemResponse(allowed);
   const params = parse(route.params, context.params, 'invalid');
   // A malformed key in the address names nothing: the same answer as for one that is not there.
-  if (!params.ok) return problemResponse(refuse('absent', 'There is no such thing, or it is not open to you.'));
+  if (!params.ok)
+    return problemResponse(refuse('absent', 'There is no such thing, or it is not open to you.'));
   const query = parse(route.query, Object.fromEntries(context.url.searchParams), 'invalid');
   if (!query.ok) return problemResponse(query);
   const version = readVersion(route, context.request);
@@ -118,7 +133,9 @@ export function serve<R extends Route>(route: R, handler: Handler<R>): APIRoute 
     const userId = (call.actor as Actor | null)?.id ?? 0;
     if (key === null) {
       const outcome = await handler(call as unknown as Call<R>);
-      return outcome.ok ? toResponse(route, outcome.value as Answer<Route>) : problemResponse(outcome);
+      return outcome.ok
+        ? toResponse(route, outcome.value as Answer<Route>)
+        : problemResponse(outcome);
     }
     const { db } = call.app;
     const opened = await openRepeatable(db, userId, key, context.url.pathname, call.body, call.now);
@@ -136,11 +153,17 @@ export function serve<R extends Route>(route: R, handler: Handler<R>): APIRoute 
     let response: Response | null = null;
     try {
       const outcome = await handler(call as unknown as Call<R>);
-      response = outcome.ok ? toResponse(route, outcome.value as Answer<Route>) : problemResponse(outcome);
+      response = outcome.ok
+        ? toResponse(route, outcome.value as Answer<Route>)
+        : problemResponse(outcome);
       return response;
     } finally {
       const kept = response?.ok
-        ? { status: response.status, answer: await response.clone().text(), etag: response.headers.get('etag') }
+        ? {
+            status: response.status,
+            answer: await response.clone().text(),
+            etag: response.headers.get('etag'),
+          }
         : null;
       await closeRepeatable(db, userId, key, kept);
     }

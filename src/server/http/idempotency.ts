@@ -8,7 +8,9 @@ import { refuse, type Refusal } from '../refusal';
 export type Kept = { status: number; answer: string; etag: string | null };
 
 const hashBody = (path: string, body: unknown) =>
-  createHash('sha256').update(`${path}\n${JSON.stringify(body)}`).digest('hex');
+  createHash('sha256')
+    .update(`${path}\n${JSON.stringify(body)}`)
+    .digest('hex');
 
 /** `first` when the work is to be done; the kept answer, or a refusal, when it was asked before. */
 export async function openRepeatable(
@@ -32,7 +34,8 @@ export async function openRepeatable(
     .select()
     .from(idempotency)
     .where(and(eq(idempotency.userId, userId), eq(idempotency.key, key)));
-  if (!row) return refuse('conflict', 'The first request with this key failed just now: repeat it.');
+  if (!row)
+    return refuse('conflict', 'The first request with this key failed just now: repeat it.');
   if (row.bodyHash !== bodyHash)
     return refuse('invalid', 'This Idempotency-Key was used with another body: take a new key.');
   if (row.status === null)

@@ -30,7 +30,10 @@ export async function readBytes(request: Request, limit: number): Promise<Outcom
 export async function readJson(request: Request, limit: number): Promise<Outcome<unknown>> {
   const type = request.headers.get('content-type')?.split(';')[0]?.trim().toLowerCase();
   if (type !== 'application/json')
-    return refuse('wrong-media', `${type || 'No content type'} was given: application/json is needed.`);
+    return refuse(
+      'wrong-media',
+      `${type || 'No content type'} was given: application/json is needed.`,
+    );
   const bytes = await readBytes(request, limit);
   if (!bytes.ok) return bytes;
   try {

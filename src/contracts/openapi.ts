@@ -1,0 +1,112 @@
+/** The API's description, made from the same schemas that validate. */
+import * as z from 'zod/v4';
+import { PERMISSIONS, type Permission } from '@/domain/people';
+import { Problem } from './common';
+import type { Route } from './route';
+import { ROUTES } from './routes';
+
+type Json = Record<string, unknown>;
+
+const schemaOf = (schema: z.ZodType, io: 'input' | 'output'): Json => {
+  const { $schema: _draft, ...rest } = z.toJSONSchema(schema, {
+    io,
+    unrepresentable: 'any',
+  }) as Json;
+  return rest;
+};
+
+function parametersOf(route: Route): Json[] {
+  const part = (schema: z.ZodType | undefined, place: 'path' | 'query'): Json[] => {
+    if (!schema) return [];
+    const json = schemaOf(schema, 'input') as {
+      properties?: Record<string, Json>;
+      required?: string[];
+    };
+    return Object.entries(json.properties ?? {}).map(([name, s]) => ({
+      name,
+      in: place,
+      required: place === 'path' || (json.required ?? []).includes(name),
+      schema: s,
+    }));
+  };
+  const header = (name: string, required: boolean, description: string): Json => ({
+    name,
+    in: 'header',
+    required,
+    description,
+    schema: { type: 'string' },
+  });
+  return [
+    ...part(route.params, 'path'),
+    ...part(route.query, 'query'),
+    ...(route.versioned ? [header('If-Match', true, 'The ETag that was read.')] : []),
+    ...(route.repeatable ? [header('Idempotency-Key', false, 'Makes a repeat harmless.')] : []),
+  ];
+}
+
+function whoOf(route: Route): string {
+  if (route.who === 'public') return 'Open to everybody.';
+  if (route.who === 'customer') return 'For a signed-in customer, their own tickets.';
+  const p = PERMISSIONS[route.who as Permission];
+  return `For ${p.roles.join(', ')}; a token needs the scope \`${p.scope}\`.`;
+}
+
+const problem = (description: string): Json => ({
+  description,
+  content: { 'application/problem+json': { schema: { $ref: '#/components/schemas/Problem' } } },
+});
+
+function operationOf(route: Route): Json {
+  const media = route.media ?? 'application/json';
+  return {
+    summary: route.summary,
+    description: whoOf(route),
+    operationId: `${route.method.toLowerCase()}${route.path.replace(/[^a-z]+(.)?/gi, (_, c: string | undefined) => (c ?? '').toUpperCase())}`,
+    parameters: parametersOf(route),
+    ...(route.who === 'public' ? { security: [] } : {}),
+    ...(route.body
+      ? {
+          requestBody: {
+            required: true,
+            content: { 'application/json': { schema: schemaOf(route.body, 'input') } },
+          },
+        }
+      : {}),
+    responses: {
+      [route.status]: {
+        description: 'As asked.',
+        ...(route.answer
+          ? { content: { [media]: { schema: schemaOf(route.answer, 'input') } } }
+          : {}),
+      },
+      default: problem('Refused, and why.'),
+    },
+  };
+}
+
+/** The OpenAPI 3.1 document. */
+export function describeApi(origin: string): Json {
+  const paths: Record<string, Json> = {};
+  for (const route of ROUTES) {
+    paths[route.path] = { ...paths[route.path], [route.method.toLowerCase()]: operationOf(route) };
+  }
+  return {
+    openapi: '3.1.0',
+    info: {
+      title: 'Meterwright',
+      version: '1',
+      description:
+        'The shop’s tool for repairing electronic test instruments. Times are RFC 3339 in UTC, money is in minor units, resistances are ohms as numbers and "OL" over range.',
+    },
+    servers: [{ url: origin }],
+    security: [{ session: [] }, { token: [] }],
+    paths,
+    components: {
+      schemas: { Problem: schemaOf(Problem, 'output') },
+      securitySchemes: {
+        session: { type: 'apiKey', in: 'cookie', name: 'mw_session' },
+        token: { type: 'http', scheme: 'bearer' },
+      },
+    },
+  };
+}

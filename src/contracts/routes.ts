@@ -1,0 +1,8 @@
+/** Every endpoint of the API, for the description and for the tests that walk them all. */
+import type { Route } from './route';
+import { serviceRoutes } from './service';
+import { sessionRoutes } from './session';
+
+export const ROUTES: Route[] = [serviceRoutes, sessionRoutes].flatMap((area) =>
+  Object.values(area as Record<string, Route>),
+);
