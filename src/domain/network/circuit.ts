@@ -1,3 +1,4 @@
+import type { Mode } from '@/domain/parts/kinds';
 import { healthyOhms, LEAST_OHMS } from './healthy';
 import type { ForcedPart, Network, NetworkPart } from './types';
 
@@ -33,9 +34,8 @@ function siemensOf(ohms: number | 'OL'): number {
 }
 
 /**
- * The circuit at a switch position (missing: the network's first). Lifted parts are gone. A forced part has
- * the resistance given, in closed and open positions alike when it is a contact that conducts more than
- * healthy; forced resistances below 1 mΩ are taken as 1 mΩ.
+ * The circuit at a switch position (missing: the network's first). Lifted parts are gone; a forced part has
+ * the resistance given, never below 1 mΩ.
  */
 export function circuitAt(
   network: Network,
@@ -45,24 +45,24 @@ export function circuitAt(
 ): Circuit {
   const numbers = netNumbers(network);
   const gone = new Set(lifted);
-  const forcedOhms = new Map(forced.map((part) => [part.ref, part.ohms]));
+  const forcedParts = new Map(forced.map((part) => [part.ref, part]));
   const edges = network.parts.map((part): Edge => {
     const [a, b] = part.nets.map((net) => numbers.get(net)!) as [number, number];
-    if (gone.has(part.ref)) return { a, b, siemens: 0 };
-    const healthy = conductsAt(part, position) ? siemensOf(healthyOhms(part)) : 0;
-    const ohms = forcedOhms.get(part.ref);
-    return { a, b, siemens: ohms === undefined ? healthy : forcedSiemens(part, healthy, ohms) };
+    const conducts = conductsAt(part, position);
+    const force = forcedParts.get(part.ref);
+    const healthy = conducts ? siemensOf(healthyOhms(part)) : 0;
+    const faulty = force !== undefined && faultActs(part, conducts, force.mode);
+    const siemens = faulty ? siemensOf(force.ohms) : healthy;
+    return { a, b, siemens: gone.has(part.ref) ? 0 : siemens };
   });
   return { nets: numbers.size, edges };
 }
 
 /**
- * Conductance of a faulty part, S. A contact's fault shows only where it makes a difference: an open or a
- * worn one (above its healthy value, short of insulating) in its closed positions, a bridged one where it
- * should be open.
+ * True when a fault in this mode changes the part here. A contact's bridge (short, leaky) shows where the
+ * contact should be open, any other of its faults where it should conduct.
  */
-export function forcedSiemens(part: NetworkPart, healthy: number, ohms: number | 'OL'): number {
-  const forced = siemensOf(ohms);
-  if (part.kind !== 'contact') return forced;
-  return forced;
+export function faultActs(part: NetworkPart, conducts: boolean, mode: Mode | undefined): boolean {
+  if (part.kind !== 'contact') return true;
+  return conducts !== (mode === 'short' || mode === 'leaky');
 }

@@ -1,4 +1,4 @@
-import type { PartKind } from '@/domain/parts/kinds';
+import type { Mode, PartKind } from '@/domain/parts/kinds';
 
 /** A part between two nets. `closed` belongs to contacts: the positions in which the contact conducts. */
 export interface NetworkPart {
@@ -40,4 +40,6 @@ export interface Probe {
 export interface ForcedPart {
   readonly ref: string;
   readonly ohms: Ohms;
+  /** Matters for a contact: a short or a leak shows in the positions where the contact should be open. */
+  readonly mode?: Mode | undefined;
 }

@@ -1,0 +1,61 @@
+import type { Circuit } from './circuit';
+import type { Drive, Prepared } from './drive';
+import { drive, prepare } from './drive';
+
+/**
+ * The base solution of one circuit, from which every changed edge follows without solving again.
+ * Edge quantities are stored one entry per edge, edge pairs row by row.
+ */
+export interface EdgeTransfers {
+  readonly prepared: Prepared;
+  /** Resistance across each edge's nets, Ω; 0 for an edge that does not conduct. */
+  readonly ohms: Float64Array;
+  /** Share of a current driven across the edge that takes another way; 0 exactly for a bridge. */
+  readonly away: Float64Array;
+  /** Transfer resistance between edges, Ω: voltage across one per ampere driven across the other. */
+  readonly between: Float64Array;
+}
+
+/** Resistance of a pair of nets and its transfer resistance to every edge, Ω. */
+export interface PairTransfer {
+  /** Infinity when the pair lies in different components; its transfers are 0 then. */
+  readonly ohms: number;
+  readonly toEdge: Float64Array;
+}
+
+function acrossEdges(circuit: Circuit, driven: Drive): Float64Array {
+  const across = new Float64Array(circuit.edges.length);
+  circuit.edges.forEach((edge, index) => {
+    if (edge.siemens > 0) across[index] = driven.volts[edge.a]! - driven.volts[edge.b]!;
+  });
+  return across;
+}
+
+/** Drives every conducting edge once. Errors of a transfer are relative to the smaller of both resistances. */
+export function edgeTransfers(circuit: Circuit): EdgeTransfers {
+  const prepared = prepare(circuit);
+  const count = circuit.edges.length;
+  const ohms = new Float64Array(count);
+  const away = new Float64Array(count).fill(1);
+  const between = new Float64Array(count * count);
+  for (let k = 0; k < count; k++) {
+    const edge = circuit.edges[k]!;
+    if (edge.siemens === 0) continue;
+    const driven = drive(prepared, edge.a, edge.b, k);
+    ohms[k] = driven.ohms;
+    away[k] = driven.away;
+    between.set(acrossEdges(circuit, driven), k * count);
+  }
+  for (let j = 1; j < count; j++)
+    for (let k = 0; k < j; k++) {
+      const better = ohms[j]! < ohms[k]! ? between[j * count + k]! : between[k * count + j]!;
+      between[j * count + k] = between[k * count + j] = better;
+    }
+  return { prepared, ohms, away, between };
+}
+
+/** Drives a pair of nets once. */
+export function pairTransfer(prepared: Prepared, a: number, b: number): PairTransfer {
+  const driven = drive(prepared, a, b);
+  return { ohms: driven.ohms, toEdge: acrossEdges(prepared.circuit, driven) };
+}
