@@ -1,17 +1,16 @@
 import type { PartKind } from '../parts/kinds';
 import type { Decoder } from './reading';
 import { scaled, threeDigits } from './reading';
-import { RESISTOR_LETTERS, letterNote, resistorTolerance } from './tolerance-letters';
-
-const THREE = new RegExp(`^(\\d{3})(${RESISTOR_LETTERS})?$`);
+import { letterNote, resistorTolerance } from './tolerance-letters';
 
 /**
- * Three digits, two figures and the zeros after them (`472` is 4.7 kΩ), with or without a tolerance letter.
- * Source: IEC 60062:2016.
+ * Three digits, two figures and the zeros after them (`472` is 4.7 kΩ), with or without one of the given
+ * tolerance letters. Source: IEC 60062:2016.
  */
-export function threeDigitCode(kind: PartKind, source: string): Decoder {
+export function threeDigitCode(kind: PartKind, source: string, letters: string): Decoder {
+  const pattern = new RegExp(`^(\\d{3})([${letters}])?$`);
   return (text) => {
-    const [, code = '', letter] = THREE.exec(text) ?? [];
+    const [, code = '', letter] = pattern.exec(text) ?? [];
     const value = threeDigits(code);
     if (value === null) return [];
     const tolerance = letter ? resistorTolerance(letter) : null;
@@ -36,9 +35,9 @@ export const fourDigitCode: Decoder = (text) => {
   return [{ kind: 'resistor', value, unit: 'Ω', tolerance: null, source }];
 };
 
-/** `0`, `000` and `0000` mark a link. */
+/** `0`, `000`, `0000` and a single black band mark a link. */
 export const zeroOhm: Decoder = (text) =>
-  /^(?:0|000|0000)$/.test(text)
+  /^(?:0|000|0000|black)$/i.test(text)
     ? [
         {
           kind: 'resistor',

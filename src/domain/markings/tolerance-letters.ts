@@ -63,7 +63,7 @@ export function capacitorTolerances(letter: string, farads: number): Tolerance[]
   const absolute = PICOFARADS[letter];
   const relative = SYMMETRIC[letter];
   const answers: Tolerance[] = [];
-  if (absolute?.farads !== undefined && farads < 10.001e-12) {
+  if (absolute?.farads !== undefined && absolute.farads < farads && farads < 10.001e-12) {
     answers.push({ ...absolute, fraction: absolute.farads / farads });
   }
   if (relative && (farads > 9.999e-12 || !absolute)) answers.push(relative);
