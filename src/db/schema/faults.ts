@@ -17,7 +17,10 @@ import { users } from './people';
 import { boards } from './shop';
 import { tickets } from './tickets';
 
-/** Symptom, cause, proof, repair: on a board or on a part family (both may stand). */
+/**
+ * Symptom, cause, proof, repair: on a board or on a part family (both may stand). Title, board, family, incident,
+ * symptoms and words are those of the revision its readers see: the published one, or the latest before that.
+ */
 export const faultNotes = mysqlTable(
   'fault_notes',
   {
@@ -31,7 +34,7 @@ export const faultNotes = mysqlTable(
     revision: int().notNull(),
     /** The revision readers see; null until first published. */
     publishedRevision: int(),
-    /** Plain words of the published revision, for the index. */
+    /** Plain words of the same revision, for lists that are searched in the database. */
     words: mediumtext().notNull(),
     fromTicketId: ref().references(() => tickets.id),
     createdBy: ref()
@@ -50,6 +53,7 @@ export const faultNotes = mysqlTable(
   ],
 );
 
+/** Everything one saved state of a note says; rows are never changed (a trigger refuses it). */
 export const faultRevisions = mysqlTable(
   'fault_revisions',
   {
@@ -58,6 +62,10 @@ export const faultRevisions = mysqlTable(
       .notNull()
       .references(() => faultNotes.id),
     revision: int().notNull(),
+    boardId: ref().references(() => boards.id),
+    partKind: mysqlEnum(PART_KINDS),
+    incident: mysqlEnum(INCIDENTS),
+    symptoms: jsonText<Symptom[]>().notNull(),
     title: varchar({ length: 160 }).notNull(),
     body: jsonText<FaultBody>().notNull(),
     authorId: ref()
@@ -82,6 +90,8 @@ export const faultSteps = mysqlTable(
     actorName: varchar({ length: 120 }).notNull(),
     fromState: mysqlEnum(FAULT_STATES).notNull(),
     toState: mysqlEnum(FAULT_STATES).notNull(),
+    /** The revision the step was about: with `toState` published, the one readers got. */
+    revision: int().notNull(),
     note: varchar({ length: 1000 }).notNull().default(''),
   },
   (t) => [index('fault_steps_note').on(t.noteId, t.id)],
