@@ -1,9 +1,10 @@
 import type { IncomingMessage, Server } from 'node:http';
+import type { Server as NetServer } from 'node:net';
 
 const loopbackName = /^(127(\.\d{1,3}){3}|localhost|\[::1\])(:\d{1,5})?$/;
 
 /** Listens on 127.0.0.1 only and returns the port taken. */
-export function listen(server: Server, port: number): Promise<number> {
+export function listen(server: NetServer, port: number): Promise<number> {
   return new Promise((resolve, reject) => {
     server.once('error', reject);
     server.listen(port, '127.0.0.1', () => {
