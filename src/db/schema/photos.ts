@@ -49,6 +49,7 @@ export const photos = mysqlTable(
     caption: varchar({ length: 200 }).notNull().default(''),
     width: int(),
     height: int(),
+    /** Of the file as it came; names the objects of the variants. Set before the first of them is put. */
     sha256: char({ length: 64 }),
     variants: jsonText<PhotoVariant[]>(),
     createdAt: moment().notNull(),
@@ -60,6 +61,8 @@ export const photos = mysqlTable(
     index('photos_ticket').on(t.ticketId),
     index('photos_board').on(t.boardId),
     index('photos_state').on(t.state, t.createdAt),
+    // Also the lock by which two photos of one picture share their objects (server/photos/objects.ts).
+    index('photos_sha').on(t.sha256),
   ],
 );
 
@@ -80,6 +83,7 @@ export const pins = mysqlTable(
       .notNull()
       .references(() => users.id),
     createdAt: moment().notNull(),
+    version: int().notNull().default(1),
   },
   (t) => [index('pins_photo').on(t.photoId)],
 );
