@@ -1,11 +1,6 @@
 import type { Network, Ohms, Probe } from '@/domain/network/types';
+import type { Accuracy } from '@/domain/quantities/accuracy';
 import type { Incident, Mode, Standing } from '@/domain/parts/kinds';
-
-/** A meter's accuracy: ±(percent of reading + counts of the last digit). */
-export interface Accuracy {
-  readonly percent: number;
-  readonly counts: number;
-}
 
 /** One resistance measurement, as the bench sheet holds it. */
 export interface Reading extends Probe {

@@ -1,0 +1,141 @@
+import { MISPROBE } from './assumptions';
+import { LOG_ROOT_TAU, normalCdf } from './normal';
+import type { Evidence } from './screen';
+import type { Scene } from './scene';
+import type { Trial } from './trial';
+import { trialOhms } from './trial';
+
+/** Contributions to the standard deviation of ln R below this are left out of the covariance. */
+const NEGLIGIBLE = 1e-5;
+
+/** Buffers of the joint likelihood, for one scene. */
+export interface Joint {
+  readonly middle: Float64Array;
+  readonly covariance: Float64Array;
+  readonly factor: Float64Array;
+  readonly solved: Float64Array;
+  /** Chance that each reading is a misprobe, filled by {@link jointLikelihood}. */
+  readonly doubt: Float64Array;
+}
+
+export function newJoint(scene: Scene): Joint {
+  const n = scene.aims.length;
+  return {
+    middle: new Float64Array(n),
+    covariance: new Float64Array(n * n),
+    factor: new Float64Array(n * n),
+    solved: new Float64Array(n),
+    doubt: new Float64Array(n),
+  };
+}
+
+/** Fills the predicted middle of every reading and the covariance that tolerances and spread faults give. */
+export function predictJoint(
+  scene: Scene,
+  evidence: Evidence,
+  trial: Trial,
+  spreadJ: number,
+  spreadK: number,
+  joint: Joint,
+): void {
+  const n = scene.aims.length;
+  const row = scene.parts + 1;
+  const shares = new Float64Array(n * row);
+  for (let r = 0; r < n; r++) {
+    const aim = scene.aims[r]!;
+    if (aim.ohms === Infinity) {
+      joint.middle[r] = Infinity;
+      continue;
+    }
+    const s = aim.setting;
+    const setting = scene.settings[s]!;
+    const ohms = trialOhms(scene, trial, r) + evidence.observations[r]!.floor;
+    joint.middle[r] = Math.log(ohms);
+    const zj = aim.toPart[trial.j]!;
+    const zk = aim.toPart[trial.k]!;
+    const p = trial.k11[s]! * zj + trial.k12[s]! * zk;
+    const q = trial.k12[s]! * zj + trial.k22[s]! * zk;
+    for (let part = 0; part < scene.parts; part++) {
+      if (part === trial.j || part === trial.k) continue;
+      const z =
+        aim.toPart[part]! -
+        p * setting.between[trial.j * row + part]! -
+        q * setting.between[trial.k * row + part]!;
+      const share = ((setting.siemens[part]! * z * z) / ohms) * scene.spread[part]!;
+      if (share > NEGLIGIBLE) shares[part * n + r] = share;
+    }
+    const newZj = trial.jj[s]! * zj + trial.jk[s]! * zk;
+    const newZk = trial.kj[s]! * zj + trial.kk[s]! * zk;
+    if (trial.j < scene.parts)
+      shares[trial.j * n + r] = ((trial.siemensJ[s]! * newZj * newZj) / ohms) * spreadJ;
+    if (trial.k < scene.parts)
+      shares[trial.k * n + r] = ((trial.siemensK[s]! * newZk * newZk) / ohms) * spreadK;
+  }
+  sumSquares(shares, scene.parts, n, joint.covariance);
+  for (let r = 0; r < n; r++) joint.covariance[r * n + r]! += evidence.observations[r]!.variance;
+}
+
+/** covariance = Σ over parts of share·shareᵀ, lower triangle. */
+function sumSquares(
+  shares: Float64Array,
+  parts: number,
+  n: number,
+  covariance: Float64Array,
+): void {
+  covariance.fill(0);
+  for (let part = 0; part < parts; part++) {
+    const at = part * n;
+    for (let r = 0; r < n; r++) {
+      const share = shares[at + r]!;
+      if (share === 0) continue;
+      for (let q = 0; q <= r; q++) covariance[r * n + q]! += share * shares[at + q]!;
+    }
+  }
+}
+
+/**
+ * ln likelihood of the readings as a multivariate normal in ln R with the covariance predicted last, factored
+ * reading by reading (Cholesky). Each reading is weighed given those before it; one better explained by a
+ * misprobe is set aside, so that it bends no other. OL is a censored reading, P(R > over range), weighed last.
+ */
+export function jointLikelihood(evidence: Evidence, joint: Joint): number {
+  const n = evidence.observations.length;
+  const { covariance, factor, solved, middle, doubt } = joint;
+  let total = 0;
+  let kept = 0;
+  const order = evidence.order;
+  const keptAs = new Int32Array(n);
+  for (const r of order) {
+    const seen = evidence.observations[r]!;
+    if (middle[r] === Infinity) {
+      const sound = seen.over ? 1 - MISPROBE : 0;
+      total += Math.log(sound + seen.misprobe);
+      doubt[r] = seen.misprobe / (sound + seen.misprobe);
+      continue;
+    }
+    let error = seen.y - middle[r]!;
+    let variance = covariance[r * n + r]!;
+    for (let i = 0; i < kept; i++) {
+      const q = keptAs[i]!;
+      let sum = r > q ? covariance[r * n + q]! : covariance[q * n + r]!;
+      for (let m = 0; m < i; m++) sum -= factor[kept * n + m]! * factor[i * n + m]!;
+      const entry = sum / factor[i * n + i]!;
+      factor[kept * n + i] = entry;
+      error -= entry * solved[i]!;
+      variance -= entry * entry;
+    }
+    // Rounding may eat a variance that readings of one point have in common: the meter's own remains.
+    variance = Math.max(variance, 0.5 * seen.variance);
+    const root = Math.sqrt(variance);
+    const sound = seen.over
+      ? (1 - MISPROBE) * normalCdf(-error / root)
+      : ((1 - MISPROBE) * Math.exp(-0.5 * (error / root) ** 2 - LOG_ROOT_TAU)) / root;
+    total += Math.log(sound + seen.misprobe);
+    doubt[r] = seen.misprobe / (sound + seen.misprobe);
+    if (seen.over || sound < seen.misprobe) continue;
+    factor[kept * n + kept] = root;
+    solved[kept] = error / root;
+    keptAs[kept++] = r;
+  }
+  return total;
+}

@@ -1,0 +1,31 @@
+import { healthyOhms, INSULATING_OHMS } from '@/domain/network/healthy';
+import type { Network, NetworkPart } from '@/domain/network/types';
+import { modesOf } from '@/domain/parts/failure-shares';
+import type { Mode } from '@/domain/parts/kinds';
+import { modeRange } from '@/domain/parts/mode-ranges';
+
+/** One way one part can fail: its resistance lies anywhere in the range, alike in ln R. */
+export interface PartMode {
+  /** Index of the part in the network. */
+  readonly part: number;
+  readonly mode: Mode;
+  /** Ends of the range, ln Ω. */
+  readonly low: number;
+  readonly high: number;
+}
+
+/** A part's healthy value as its mode sees it: a bridged contact is one that should insulate. */
+function nominal(part: NetworkPart, mode: Mode): number {
+  const bridge = part.kind === 'contact' && (mode === 'short' || mode === 'leaky');
+  return bridge ? INSULATING_OHMS : healthyOhms(part);
+}
+
+/** Every single fault of the network, parts in order and each part's modes together. */
+export function partModes(network: Network): PartMode[] {
+  return network.parts.flatMap((part, index) =>
+    modesOf(part.kind).map((mode) => {
+      const { low, high } = modeRange(mode, nominal(part, mode));
+      return { part: index, mode, low: Math.log(low), high: Math.log(high) };
+    }),
+  );
+}
