@@ -28,7 +28,7 @@ export async function startStore(children, folder, ports, secrets) {
 /** Start the mail catcher and wait until it accepts mail. */
 export async function startMailCatcher(children, folder, ports) {
   const entry = startFake(children, folder, 'mail catcher', 'mail-catcher', scripts.mail, {
-    'smtp-port': ports.smtp,
+    port: ports.smtp,
     'http-port': ports.inbox,
     'control-port': ports.mailControl,
     data: `${folder}/mail-catcher`,
