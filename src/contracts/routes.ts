@@ -1,9 +1,19 @@
 /** Every endpoint of the API, for the description and for the tests that walk them all. */
 import type { Route } from './route';
+import { benchRoutes } from './bench';
+import { computeRoutes } from './compute';
+import { deskRoutes } from './desk';
+import { ticketRoutes } from './tickets';
 import { photoRoutes } from './photos';
 import { serviceRoutes } from './service';
 import { sessionRoutes } from './session';
 
-export const ROUTES: Route[] = [serviceRoutes, sessionRoutes, photoRoutes].flatMap((area) =>
-  Object.values(area as Record<string, Route>),
-);
+export const ROUTES: Route[] = [
+  serviceRoutes,
+  sessionRoutes,
+  ticketRoutes,
+  benchRoutes,
+  photoRoutes,
+  deskRoutes,
+  computeRoutes,
+].flatMap((area) => Object.values(area as Record<string, Route>));

@@ -1,0 +1,83 @@
+/** Tickets as the API shows them. */
+import type { Queryable } from '@/db/client';
+import type { QueueQuery } from '@/contracts/tickets';
+import type { Role } from '@/domain/people';
+import { offeredSteps } from '@/domain/tickets/stages';
+import { boardLabel } from '../boards/queries';
+import { pageByOffset } from '../http/pages';
+import { factsOf } from './commands';
+import { cautionsOf, eventsOf, queue, ticketRecord, type TicketFull } from './queries';
+
+export const boardOf = (t: { boardCode: string | null; boardRevision: string | null }) =>
+  t.boardCode !== null && t.boardRevision !== null
+    ? boardLabel({ code: t.boardCode, revision: t.boardRevision })
+    : null;
+
+export const ticketRow = (t: TicketFull) => ({
+  number: t.number,
+  stage: t.stage,
+  instrument: { id: t.instrumentId, maker: t.maker, model: t.model, serial: t.serial },
+  board: boardOf(t),
+  customer: { id: t.customerId, name: t.customerName },
+  symptoms: t.symptoms,
+  incident: t.incident,
+  assignedTo:
+    t.assignedId !== null && t.assignedName !== null
+      ? { id: t.assignedId, name: t.assignedName }
+      : null,
+  promisedOn: t.promisedOn,
+  receivedAt: t.receivedAt.toISOString(),
+  stageAt: t.stageAt.toISOString(),
+  unseen: t.unseen,
+});
+
+export const cautionList = (ticked: Awaited<ReturnType<typeof cautionsOf>>) =>
+  ticked.map((c) => ({ ...c, at: c.at.toISOString() }));
+
+export const writtenView = (m: {
+  id: number;
+  side: 'customer' | 'shop';
+  author: string;
+  body: string;
+  at: Date;
+}) => ({ id: m.id, side: m.side, author: m.author, body: m.body, at: m.at.toISOString() });
+
+export const ticketPage = (db: Queryable, query: QueueQuery, me: number) =>
+  pageByOffset(query, async (limit, offset) =>
+    (await queue(db, query, me, limit, offset)).rows.map(ticketRow),
+  );
+
+export async function ticketDetail(db: Queryable, ticket: TicketFull, role: Role) {
+  const [record, events, cautions, facts] = await Promise.all([
+    ticketRecord(db, ticket.id),
+    eventsOf(db, ticket.id),
+    cautionsOf(db, ticket.id),
+    factsOf(db, ticket),
+  ]);
+  return {
+    ...ticketRow(ticket),
+    version: ticket.version,
+    symptomText: record.symptomText,
+    accessories: record.accessories,
+    accessoryText: record.accessoryText,
+    condition: record.condition,
+    estimate:
+      record.estimateMinor !== null && record.estimateCurrency !== null
+        ? {
+            total: { amount: record.estimateMinor, currency: record.estimateCurrency },
+            work: record.estimateFor ?? '',
+          }
+        : null,
+    exception: record.exceptionReason,
+    cautions: cautionList(cautions),
+    steps: offeredSteps(facts, role),
+    events: events.map((e) => ({
+      at: e.at.toISOString(),
+      who: e.actorName,
+      kind: e.kind,
+      from: e.fromStage,
+      to: e.toStage,
+      note: e.note,
+    })),
+  };
+}
