@@ -1,3 +1,4 @@
+import { sql } from 'drizzle-orm';
 import {
   char,
   index,
@@ -23,14 +24,22 @@ export const users = mysqlTable(
     passwordHash: varchar({ length: 255 }),
     /** Sealed with the app secret (server/auth/secrets.ts). */
     totpSecret: varchar({ length: 255 }),
+    /** The time step of the last TOTP code that was taken: no code works twice. */
+    totpLastStep: ref(),
     customerId: ref().references(() => customers.id),
     disabledAt: moment(),
     createdAt: moment().notNull(),
     version: int().notNull().default(1),
+    /** Staff sign in by e-mail, whatever their role becomes, so among them it stands once. */
+    staffEmail: varchar({ length: 190 }).generatedAlwaysAs(
+      sql`(if(\`role\` = 'customer', null, \`email\`))`,
+      { mode: 'stored' },
+    ),
   },
   (t) => [
-    // Staff sign in by e-mail; a customer's e-mail may also be a colleague's, so the role is part of the key.
+    // A customer's e-mail may also be a colleague's, so the role is part of the key.
     uniqueIndex('users_email_role').on(t.email, t.role),
+    uniqueIndex('users_staff_email').on(t.staffEmail),
     uniqueIndex('users_customer').on(t.customerId),
   ],
 );
