@@ -120,9 +120,16 @@ async function waitUntilItSpeaks(entry, port, folder) {
       throw new Stop(
         `MariaDB did not start (its files are in ${folder}/mariadb): the last lines of its log say why. ` +
           'Put that right, then start again.',
-        tail(entry.log) || String(entry.error ?? `it ended with ${entry.code} and said nothing`),
+        lastWords(entry),
       );
   }
+}
+
+/** The end of the log without the notes among it, or what the system said. */
+function lastWords({ log, error, code }) {
+  const lines = tail(log, 40).split('\n');
+  const telling = lines.filter((line) => line !== '' && !line.includes('[Note]')).slice(-15);
+  return telling.join('\n') || String(error ?? `it ended with ${code} and said nothing`);
 }
 
 /** Whether a MariaDB greets on the port: its first packet names protocol version 10. */

@@ -48,6 +48,15 @@ export function stillLives(record) {
   );
 }
 
+/** The nearest process above this one whose command line fits, or undefined. */
+export function findAncestor(pattern) {
+  for (let pid = process.ppid; pid > 1; pid = Number(stat(pid)?.[1] ?? 0)) {
+    const record = identify(pid);
+    if (record && pattern.test(record.commandLine)) return record;
+  }
+  return undefined;
+}
+
 function everyPid() {
   return readdirSync('/proc')
     .filter((name) => /^\d+$/.test(name))

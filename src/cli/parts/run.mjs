@@ -1,6 +1,7 @@
 // The frame of every command: lock, recovery, signals, and the end of all that was started.
 import { endLeftOvers, manageChildren } from './children.mjs';
 import { takeLock } from './lock.mjs';
+import { findAncestor, stillLives } from './process-table.mjs';
 import { say, sayWhy, Stop } from './say.mjs';
 
 /**
@@ -51,11 +52,11 @@ function watchForEnd() {
     process.on('SIGINT', () => ask('Ctrl-C'));
     process.on('SIGTERM', () => ask('Asked to end'));
     process.on('SIGHUP', () => ask('The terminal is gone'));
-    // npm killed outright passes no signal on: its child is then given another parent.
-    const parent = process.ppid;
-    if (process.env.npm_lifecycle_event)
+    // npm killed outright passes no signal on.
+    const npm = findAncestor(/^npm /);
+    if (npm)
       setInterval(() => {
-        if (process.ppid !== parent) ask('npm is gone');
+        if (!stillLives(npm)) ask('npm is gone');
       }, 1_000).unref();
   });
   return asked;
