@@ -59,3 +59,31 @@ function blockWords(block: Block): string {
 export function sectionWords(blocks: readonly Block[]): string {
   return blocks.map(blockWords).join(' ').replace(/\s+/g, ' ').trim();
 }
+
+/** Every node of a section, whatever its depth. */
+function* nodesOf(blocks: readonly Block[]): Generator<Block | Inline> {
+  for (const block of blocks) {
+    yield block;
+    if (block.type === 'bulletList' || block.type === 'orderedList')
+      for (const item of block.content) yield* nodesOf(item.content);
+    else if (block.type === 'paragraph' || block.type === 'caution') yield* block.content ?? [];
+  }
+}
+
+/** The part references named by chips, each once, in order of appearance. */
+export function partRefs(body: FaultBody): string[] {
+  const refs = new Set<string>();
+  for (const section of SECTIONS)
+    for (const node of nodesOf(body[section]))
+      if (node.type === 'partRef') refs.add(node.attrs.ref);
+  return [...refs];
+}
+
+/** The photos shown, by public id, each with where it stands: `proof`. */
+export function photosIn(body: FaultBody): { id: string; section: Section }[] {
+  return SECTIONS.flatMap((section) =>
+    [...nodesOf(body[section])].flatMap((node) =>
+      node.type === 'photo' ? [{ id: node.attrs.id, section }] : [],
+    ),
+  );
+}
