@@ -13,7 +13,7 @@ export const DEFAULT_LIMIT = 20;
  * Ranks what may have failed, given a network and readings of it: model-based diagnosis (de Kleer and
  * Williams 1987) with Bayes' rule over the healthy network, every single fault and every pair.
  *
- * The network must be free of violations (`checkNetwork` of the network area) and the readings must name its
+ * The network must be free of violations (`violations` of the network area) and the readings must name its
  * nets, positions and parts.
  * @throws RangeError when a reading names a net that is not in the network.
  */

@@ -23,7 +23,7 @@ export function needsOhms(kind: PartKind): boolean {
 /**
  * The resistance of the part when healthy, Ω (a closed contact's for a contact): its own value, or the
  * usual one of its kind.
- * @throws RangeError when neither is known; `checkNetwork` reports that first.
+ * @throws RangeError when neither is known; `violations` reports that first.
  */
 export function healthyOhms(part: NetworkPart): number {
   if (part.ohms !== undefined) return Math.max(part.ohms, LEAST_OHMS);

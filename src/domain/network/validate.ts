@@ -10,7 +10,7 @@ const HIGHEST_OHMS = 1e15;
  * Every rule the network breaks, with its path, part and nets; an empty list means that it can be computed.
  * Paths are written as in the API: `parts[2].nets[0]`.
  */
-export function checkNetwork(network: Network): Violation[] {
+export function violations(network: Network): Violation[] {
   const found: Violation[] = [];
   const positions = new Set<string>();
   network.positions.forEach((position, index) => {
