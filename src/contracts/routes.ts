@@ -3,6 +3,7 @@ import type { Route } from './route';
 import { benchRoutes } from './bench';
 import { computeRoutes } from './compute';
 import { deskRoutes } from './desk';
+import { statusRoutes } from './status';
 import { ticketRoutes } from './tickets';
 import { photoRoutes } from './photos';
 import { serviceRoutes } from './service';
@@ -16,4 +17,5 @@ export const ROUTES: Route[] = [
   photoRoutes,
   deskRoutes,
   computeRoutes,
+  statusRoutes,
 ].flatMap((area) => Object.values(area as Record<string, Route>));

@@ -28,7 +28,7 @@ function transportFor(url: string): Transport {
 /** Sends one mail. @throws when the mail server does not take it: the outbox tries again. */
 export async function sendMail(settings: Settings, mail: Mail): Promise<void> {
   await transportFor(settings.mail.url).sendMail({
-    from: { name: settings.shop.name, address: settings.mail.from },
+    from: settings.mail.from,
     to: mail.to,
     subject: mail.subject,
     text: mail.text,

@@ -1,0 +1,89 @@
+/** How a customer comes in: ticket number and claim code, or a one-time link by e-mail. */
+import { eq } from 'drizzle-orm';
+import { inTransaction, type Database } from '@/db/client';
+import { users } from '@/db/schema/people';
+import { customers } from '@/db/schema/shop';
+import { tickets } from '@/db/schema/tickets';
+import type { Limits } from '../auth/limits';
+import { issueOneTime, useOneTime } from '../auth/one-time';
+import { hashClaimCode, sameHash } from '../auth/secrets';
+import type { SessionKeeper } from '../auth/sessions';
+import { accountOf } from '../customers/commands';
+import { customersByEmail } from '../customers/queries';
+import { linkMail } from '../mail/letters';
+import { promise } from '../outbox/commands';
+import { done, refuse, type Outcome } from '../refusal';
+import type { Shop } from '../tickets/types';
+
+const wrong = () =>
+  refuse(
+    'invalid',
+    'Ticket number and claim code don’t belong together: check both on your receipt.',
+  );
+
+/** Opens a session that sees this ticket alone. Tries are limited per ticket and per address. */
+export async function enterByClaim(
+  app: { db: Database; limits: Limits; sessions: SessionKeeper },
+  input: { number: string; code: string },
+  secret: string,
+  address: string,
+): Promise<Outcome<{ cookie: string; number: string }>> {
+  const tooMany =
+    (await app.limits.take('claim', input.number)) ??
+    (await app.limits.take('claim-address', address));
+  if (tooMany) return tooMany;
+  const [ticket] = await app.db.select().from(tickets).where(eq(tickets.number, input.number));
+  const given = hashClaimCode(secret, input.number, input.code);
+  if (!ticket || !sameHash(ticket.claimHash, given)) return wrong();
+  const account = await accountOf(app.db, ticket.customerId);
+  if (account === null) throw new Error(`Customer ${ticket.customerId} has no account.`);
+  await app.limits.clear('claim', input.number);
+  return done({ cookie: await app.sessions.open(account, ticket.id), number: ticket.number });
+}
+
+/** Mails a one-time link to every customer with this e-mail. The answer is the same when there is none. */
+export async function sendLink(
+  app: { db: Database; limits: Limits },
+  email: string,
+  shop: Shop,
+  address: string,
+  now: Date,
+): Promise<Outcome<null>> {
+  const tooMany =
+    (await app.limits.take('mail', email)) ?? (await app.limits.take('mail-address', address));
+  if (tooMany) return tooMany;
+  for (const customer of await customersByEmail(app.db, email)) {
+    const account = await accountOf(app.db, customer.id);
+    if (account === null) continue;
+    await inTransaction(app.db, async (tx) => {
+      const token = await issueOneTime(tx, 'link', account, now);
+      const mail = linkMail(shop, { name: customer.name, email }, token);
+      await promise(
+        tx,
+        shop.secret,
+        `link:${account}:${now.getTime()}`,
+        { kind: 'mail', mail },
+        now,
+      );
+    });
+  }
+  return done(null);
+}
+
+/** Uses a one-time link: the session it opens sees all tickets of that customer. */
+export async function enterByLink(
+  app: { db: Database; sessions: SessionKeeper },
+  token: string,
+  now: Date,
+): Promise<Outcome<{ cookie: string }>> {
+  const account = await useOneTime(app.db, 'link', token, now);
+  if (account === null)
+    return refuse('absent', 'This link was used already or has run out: ask for a new one.');
+  const [user] = await app.db
+    .select({ id: users.id, disabledAt: users.disabledAt })
+    .from(users)
+    .innerJoin(customers, eq(customers.id, users.customerId))
+    .where(eq(users.id, account));
+  if (!user || user.disabledAt) return refuse('absent', 'This link no longer works.');
+  return done({ cookie: await app.sessions.open(account) });
+}
