@@ -22,6 +22,8 @@ export type Route = {
   versioned?: true;
   /** An `Idempotency-Key` makes a repeat harmless. */
   repeatable?: true;
+  /** The list is offered as CSV too: by `Accept: text/csv` or `?format=csv`, all pages at once. */
+  csv?: true;
   /** Bytes of body accepted; 256 kB unless told. */
   bodyLimit?: number;
 };

@@ -39,3 +39,22 @@ export type Permission = keyof typeof PERMISSIONS;
 export function roleMay(role: Role, permission: Permission): boolean {
   return (PERMISSIONS[permission].roles as readonly Role[]).includes(role);
 }
+
+/**
+ * What a token of this role may be given: the scopes of the permissions the role holds. Looking after one's own
+ * account is left out, as it is done signed in and never by token.
+ */
+export function scopesFor(role: Role): Scope[] {
+  const held = Object.entries(PERMISSIONS).filter(
+    ([name, { roles }]) => name !== 'account.own' && (roles as readonly Role[]).includes(role),
+  );
+  return SCOPES.filter((scope) => held.some(([, permission]) => permission.scope === scope));
+}
+
+/** What each scope lets a token do, in words. */
+export const SCOPE_WORDS: Readonly<Record<Scope, string>> = {
+  read: 'See tickets, boards, fault notes; use the calculators',
+  bench: 'Readings, photos, fault notes, board files',
+  desk: 'Intake, steps, messages',
+  admin: 'People and the audit log',
+};

@@ -8,6 +8,8 @@ const WINDOWS = {
   'sign-in': { points: 8, duration: 15 * 60 },
   /** Wrong passwords from one address, whoever is tried. */
   'sign-in-address': { points: 60, duration: 15 * 60 },
+  /** Wrong codes of one account's second factor. */
+  totp: { points: 6, duration: 15 * 60 },
   /** Wrong claim codes for one ticket. */
   claim: { points: 8, duration: 15 * 60 },
   'claim-address': { points: 40, duration: 15 * 60 },
@@ -16,6 +18,7 @@ const WINDOWS = {
   'mail-address': { points: 30, duration: 60 * 60 },
   /** Messages of one customer. */
   message: { points: 20, duration: 60 * 60 },
+  /** API tokens made by one person. */
   token: { points: 30, duration: 15 * 60 },
 } as const;
 export type LimitName = keyof typeof WINDOWS;
@@ -56,5 +59,7 @@ export function makeLimits(pool: Pool, databaseName: string) {
     },
     /** After a success the counter starts anew. */
     clear: (name: LimitName, subject: string) => limiters[name].delete(keyOf(subject)),
+    /** Gives one try back: it turned out to be no guess. */
+    giveBack: (name: LimitName, subject: string) => limiters[name].reward(keyOf(subject)),
   };
 }

@@ -4,7 +4,11 @@ import { seal } from '../auth/secrets';
 
 export type Mail = { to: string; subject: string; text: string };
 /** What the worker knows how to do. */
-export type Job = { kind: 'mail'; mail: Mail } | { kind: 'photo'; photoId: number };
+export type Job =
+  | { kind: 'mail'; mail: Mail }
+  | { kind: 'photo'; photoId: number }
+  /** Somebody asked for a new password: the worker finds out whether there is such an account. */
+  | { kind: 'reset'; email: string };
 
 /**
  * Promises a job inside the caller's transaction. `onceKey` names the event ("receipt:2612-0047:1"): a second

@@ -4,6 +4,7 @@
  */
 import { and, asc, eq, isNull, lte } from 'drizzle-orm';
 import { outbox } from '@/db/schema/outbox';
+import { sendResetLink } from '../auth/reset';
 import { unseal } from '../auth/secrets';
 import { sendMail } from '../mail/send';
 import type { Runtime } from '../runtime';
@@ -35,6 +36,7 @@ async function takeJob(app: Runtime, now: Date) {
 
 async function perform(app: Runtime, job: Job): Promise<void> {
   if (job.kind === 'mail') await sendMail(app.settings, job.mail);
+  else if (job.kind === 'reset') await sendResetLink(app, job.email, new Date());
   else throw new Error(`No worker for ${job.kind}.`);
 }
 
