@@ -4,6 +4,7 @@ import { describe, expect, it } from 'vitest';
 import { MODES, PART_KINDS } from '@/domain/parts/kinds';
 import { AccuracyScale } from '@/islands/shared/AccuracyScale';
 import { Field } from '@/islands/shared/Field';
+import { MeterFace } from '@/islands/shared/MeterFace';
 import { PartSymbol, partName, type PartState } from '@/islands/shared/PartSymbol';
 import { ProbabilityScale, writeProbability } from '@/islands/shared/ProbabilityScale';
 import { ReadingScale } from '@/islands/shared/ReadingScale';
@@ -183,6 +184,7 @@ it('draws without style attributes, which the content security policy refuses', 
       )}
       <ProbabilityScale value={0.5} low={0.2} high={0.7} label="R1" />
       <ReadingScale measured={5} predicted={4} low={3} high={6} text="5 Ω" label="A to B" wide />
+      <MeterFace deflection={0.5} />
       <AccuracyScale error={1} limit={2} guard={0.2} uncertainty={0.2} text="1 V" label="V" wide />
     </>,
   );

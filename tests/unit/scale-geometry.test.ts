@@ -4,6 +4,7 @@ import {
   FULL,
   OHMS,
   OL_AT,
+  dialPoint,
   linearGraduations,
   logGraduations,
   ohmmeterDeflection,
@@ -170,5 +171,16 @@ describe('a moving-coil ohmmeter', () => {
     expect(ohmmeterDeflection(0, 20)).toBe(1);
     expect(ohmmeterDeflection(20, 20)).toBe(0.5);
     expect(ohmmeterDeflection(Infinity, 20)).toBe(0);
+  });
+});
+
+describe("a point of a meter's face", () => {
+  it('stands upright at half deflection and alike on either side', () => {
+    expect(dialPoint(0.5, 200)).toEqual({ x: 0, y: -200 });
+    const left = dialPoint(0.2, 200);
+    const right = dialPoint(0.8, 200);
+    expect(left.x).toBeCloseTo(-right.x, 10);
+    expect(left.y).toBe(right.y);
+    expect(Math.hypot(left.x, left.y)).toBeCloseTo(200, 1);
   });
 });

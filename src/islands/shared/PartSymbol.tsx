@@ -36,7 +36,7 @@ export function PartGlyph({ kind, state }: { kind: PartKind; state: PartState })
   return (
     <g className={`symbol-glyph ${STANDING[state] ?? 'symbol-failed'}`}>
       {state === 'open' ? (
-        <path d={`M0 22h3M1 26l4-8M8 26l4-8M10 22H${left}`} />
+        <path d={`M0 22h2.5M.5 26l4-8M8.5 26l4-8M10.5 22H${left}`} />
       ) : state === 'untouched' ? null : (
         <path d={`M0 22H${left}`} />
       )}

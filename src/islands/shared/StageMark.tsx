@@ -1,6 +1,8 @@
 /** One stage's stretch of the line with its graduations, drawn for both directions; the style sheet shows one. */
 
 const MINOR = [0, 10, 20, 30, 40, 60, 70, 80, 90];
+/** A column's stretch is short: quarters are fine enough. */
+const MINOR_DOWN = [0, 25, 75];
 const BASE = 34.5;
 const SIDE = 30.5;
 
@@ -19,6 +21,7 @@ export function StageMark({
   // A hair over the edge, so that no gap shows where two stretches meet between pixels.
   const to = last ? '90%' : '100.4%';
   const minor = MINOR.filter((at) => !(first && at < 10) && !(last && at > 90));
+  const minorDown = MINOR_DOWN.filter((at) => !(first && at < 10));
   const exit = line === 'exit';
   const gone = line === 'passed' ? to : line === 'reached' ? '50%' : null;
   return (
@@ -62,7 +65,7 @@ export function StageMark({
           </>
         ) : (
           <>
-            {minor.map((at) => (
+            {minorDown.map((at) => (
               <line
                 key={at}
                 className="scale-minor"

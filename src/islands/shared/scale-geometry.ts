@@ -176,3 +176,12 @@ export function planAccuracy(
 export function ohmmeterDeflection(ohms: number, mid: number): number {
   return mid / (mid + ohms);
 }
+
+/** Half the sweep of a moving-coil needle, degrees either side of upright. */
+const SWEEP = 48;
+
+/** A point of a meter's face, `radius` from the pivot at (0, 0), y down; deflection 0 at the left, 1 at the right. */
+export function dialPoint(deflection: number, radius: number): { x: number; y: number } {
+  const angle = ((deflection - 0.5) * 2 * SWEEP * Math.PI) / 180;
+  return { x: round(radius * Math.sin(angle)), y: round(-radius * Math.cos(angle)) };
+}
