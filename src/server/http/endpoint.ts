@@ -30,6 +30,8 @@ export type Call<R extends Route> = {
   request: Request;
   /** Where the request came from, for rate limits. */
   address: string;
+  /** The value of the session cookie, if one was sent. */
+  sessionCookie: string | undefined;
 };
 /** A JSON value with its version, or a finished response (images, streams, CSV). */
 export type Answer<R extends Route> =
@@ -79,7 +81,7 @@ async function answer(
   route: Route,
   context: APIContext,
 ): Promise<Response | { call: Call<Route> }> {
-  const { actor: who, requestId, log, address } = context.locals;
+  const { actor: who, requestId, log, address, sessionCookie } = context.locals;
   const allowed = authorise(route, who);
   if ('ok' in allowed) return problemResponse(allowed);
   const params = parse(route.params, context.params, 'invalid');
@@ -110,6 +112,7 @@ async function answer(
     requestId,
     request: context.request,
     address,
+    sessionCookie,
   };
   return { call: call as Call<Route> };
 }
@@ -137,8 +140,9 @@ export function serve<R extends Route>(route: R, handler: Handler<R>): APIRoute 
         ? toResponse(route, outcome.value as Answer<Route>)
         : problemResponse(outcome);
     }
-    const { db } = call.app;
-    const opened = await openRepeatable(db, userId, key, context.url.pathname, call.body, call.now);
+    const { db, settings } = call.app;
+    const repeat = { userId, key, secret: settings.secret };
+    const opened = await openRepeatable(db, repeat, context.url.pathname, call.body, call.now);
     if (opened !== 'first')
       return 'ok' in opened
         ? problemResponse(opened)
@@ -165,7 +169,7 @@ export function serve<R extends Route>(route: R, handler: Handler<R>): APIRoute 
             etag: response.headers.get('etag'),
           }
         : null;
-      await closeRepeatable(db, userId, key, kept);
+      await closeRepeatable(db, repeat, kept);
     }
   };
 }
