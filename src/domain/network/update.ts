@@ -10,13 +10,15 @@ export interface EdgeChange {
 
 /** A perfect short where a solution has to be rebuilt, S. */
 const SHORT_SIEMENS = 1e15;
-/** Digits lost to cancellation from which a solution is rebuilt: 1e-7 leaves nine of sixteen. */
-const CANCELLED = 1e-7;
+/** Rounding of a base solution, relative: a few times that of one operation. */
+const ROUNDING = 1e-15;
+/** A change whose rounding may exceed this fraction of its result is solved afresh. */
+const WANTED = 1e-10;
 
 /**
  * Resistance of a pair of nets after one or two edges changed, from the base solution alone
  * (Sherman and Morrison 1950; Woodbury 1950). A change that separates the nets gives Infinity exactly; one
- * that cancels more than seven digits is solved afresh.
+ * that cancels too many digits (a near-bridge opened, a short across a high resistance) is solved afresh.
  *
  * @throws RangeError for more than two changes, or two of one edge.
  */
@@ -35,12 +37,13 @@ export function changedResistance(
   // An edge that was not there has no base solution across it.
   if (real.some((change) => circuit.edges[change.edge]!.siemens === 0)) return fresh();
   if (!Number.isFinite(pair.ohms)) return pair.ohms;
-  const drop = real.length === 1 ? oneDrop(base, pair, real[0]!) : twoDrop(base, pair, real);
+  const { drop, error } = dropOf(base, pair, real);
   const changed = pair.ohms - drop;
-  return drop === drop && changed > CANCELLED * pair.ohms ? changed : fresh();
+  const rounding = error + ROUNDING * (pair.ohms + Math.abs(drop));
+  return Number.isFinite(changed) && rounding <= WANTED * changed ? changed : fresh();
 }
 
-/** (1 + δ·R)/δ of an edge, Ω, without subtraction for the cases that cancel. */
+/** (1 + δ·R)/δ of an edge, Ω, without subtraction where it would cancel; 0 for a bridge taken away. */
 function pivot(base: EdgeTransfers, change: EdgeChange): number {
   const g = base.prepared.circuit.edges[change.edge]!.siemens;
   if (change.siemens === Infinity) return base.ohms[change.edge]!;
@@ -48,21 +51,35 @@ function pivot(base: EdgeTransfers, change: EdgeChange): number {
   return factor / (change.siemens - g);
 }
 
-function oneDrop(base: EdgeTransfers, pair: PairTransfer, change: EdgeChange): number {
-  const z = pair.toEdge[change.edge]!;
-  const p = pivot(base, change);
-  return p === 0 ? NaN : (z * z) / p;
-}
-
-function twoDrop(base: EdgeTransfers, pair: PairTransfer, changes: readonly EdgeChange[]): number {
-  const [j, k] = changes as [EdgeChange, EdgeChange];
-  const count = base.ohms.length;
-  const [zj, zk] = [pair.toEdge[j.edge]!, pair.toEdge[k.edge]!];
-  const between = base.between[j.edge * count + k.edge]!;
-  const [pj, pk] = [pivot(base, j), pivot(base, k)];
+/** How far the resistance drops, Ω, and how far rounding may have moved that; NaN where it cannot be told. */
+function dropOf(
+  base: EdgeTransfers,
+  pair: PairTransfer,
+  changes: readonly EdgeChange[],
+): { drop: number; error: number } {
+  const [j, k] = changes as [EdgeChange, EdgeChange?];
+  const zj = pair.toEdge[j.edge]!;
+  const pj = pivot(base, j);
+  const noise = ROUNDING * pair.ohms;
+  if (k === undefined)
+    return { drop: (zj * zj) / pj, error: (noise * (2 * Math.abs(zj) + noise)) / Math.abs(pj) };
+  const zk = pair.toEdge[k.edge]!;
+  const pk = pivot(base, k);
+  const between = base.between[j.edge * base.ohms.length + k.edge]!;
   const determinant = pj * pk - between * between;
-  if (Math.abs(determinant) <= CANCELLED * (Math.abs(pj * pk) + between * between)) return NaN;
-  return (zj * zj * pk - 2 * zj * zk * between + zk * zk * pj) / determinant;
+  const numerator = zj * zj * pk - 2 * zj * zk * between + zk * zk * pj;
+  const drop = numerator / determinant;
+  const betweenNoise = ROUNDING * Math.min(base.ohms[j.edge]!, base.ohms[k.edge]!);
+  const far = Math.abs(zj) + Math.abs(zk) + noise;
+  const pivots = Math.abs(pj) + Math.abs(pk) + Math.abs(between);
+  const numeratorError =
+    2 * far * (noise * pivots + betweenNoise * far) + ROUNDING * far * far * pivots;
+  const determinantError =
+    ROUNDING * Math.abs(pj * pk) + betweenNoise * (2 * Math.abs(between) + betweenNoise);
+  return {
+    drop,
+    error: (numeratorError + Math.abs(drop) * determinantError) / Math.abs(determinant),
+  };
 }
 
 function rebuilt(
