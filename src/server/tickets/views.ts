@@ -4,6 +4,7 @@ import type { QueueQuery } from '@/contracts/tickets';
 import type { Role } from '@/domain/people';
 import { offeredSteps } from '@/domain/tickets/stages';
 import { boardLabel } from '../boards/queries';
+import { csvResponse } from '../http/csv';
 import { pageByOffset } from '../http/pages';
 import { factsOf } from './commands';
 import { cautionsOf, eventsOf, queue, ticketRecord, type TicketFull } from './queries';
@@ -81,3 +82,35 @@ export async function ticketDetail(db: Queryable, ticket: TicketFull, role: Role
     })),
   };
 }
+
+/** Every row of a filter, read in steps so that a long list is never held whole. */
+async function* everyRow(db: Queryable, query: QueueQuery, me: number) {
+  const step = 200;
+  for (let offset = 0; ; offset += step) {
+    const { rows } = await queue(db, query, me, step, offset);
+    yield* rows;
+    if (rows.length < step) return;
+  }
+}
+
+/** The queue as a file. */
+export const queueCsv = (db: Queryable, request: Request, query: QueueQuery, me: number) =>
+  csvResponse(
+    request,
+    'tickets',
+    [
+      { name: 'ticket', value: (t) => t.number },
+      { name: 'stage', value: (t) => t.stage },
+      { name: 'maker', value: (t) => t.maker },
+      { name: 'model', value: (t) => t.model },
+      { name: 'serial', value: (t) => t.serial },
+      { name: 'board', value: (t) => boardOf(t) },
+      { name: 'customer', value: (t) => t.customerName },
+      { name: 'symptoms', value: (t) => t.symptoms.join('; ') },
+      { name: 'incident', value: (t) => t.incident },
+      { name: 'bench', value: (t) => t.assignedName },
+      { name: 'received', value: (t) => t.receivedAt },
+      { name: 'promised', value: (t) => t.promisedOn },
+    ],
+    everyRow(db, query, me),
+  );

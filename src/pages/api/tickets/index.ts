@@ -1,12 +1,15 @@
 import { ticketRoutes } from '@/contracts/tickets';
+import { wantsCsv } from '@/server/http/csv';
 import { serve } from '@/server/http/endpoint';
 import { takeIn } from '@/server/intake/commands';
 import { done } from '@/server/refusal';
 import { shopOf } from '@/server/shop';
-import { ticketPage } from '@/server/tickets/views';
+import { queueCsv, ticketPage } from '@/server/tickets/views';
 
-export const GET = serve(ticketRoutes.list, ({ app, actor, query }) =>
-  ticketPage(app.db, query, actor.id),
+export const GET = serve(ticketRoutes.list, async ({ app, actor, query, request }) =>
+  wantsCsv(request)
+    ? done(queueCsv(app.db, request, query, actor.id))
+    : ticketPage(app.db, query, actor.id),
 );
 
 export const POST = serve(ticketRoutes.intake, async ({ app, actor, body, now }) => {
