@@ -1,5 +1,7 @@
 import type { Circuit } from './circuit';
 import { components } from './connectivity';
+import type { Workspace } from './star-mesh';
+import { eliminate, leastDegree, newWorkspace, putBack } from './star-mesh';
 
 /** A circuit made ready to be driven between any two nets: its conductances and an order of elimination. */
 export interface Prepared {
@@ -7,8 +9,9 @@ export interface Prepared {
   readonly component: Int32Array;
   /** Symmetric matrix of conductance between nets, S, row by row; the diagonal is not used. */
   readonly siemens: Float64Array;
-  /** Nets in order of least degree, so that few new edges arise. */
-  readonly order: Int32Array;
+  /** Nets of each component in order of least degree, so that few new edges arise. */
+  readonly order: readonly Int32Array[];
+  readonly workspace: Workspace;
 }
 
 /** What one ampere from net a to net b does: resistance in Ω and the voltage of every net above b's. */
@@ -30,26 +33,11 @@ export function prepare(circuit: Circuit): Prepared {
     siemens[a * n + b]! += g;
     siemens[b * n + a]! += g;
   }
-  return { circuit, component: components(circuit), siemens, order: leastDegree(siemens, n) };
-}
-
-function leastDegree(siemens: Float64Array, n: number): Int32Array {
-  const near = Array.from({ length: n }, () => new Set<number>());
-  for (let i = 0; i < n; i++)
-    for (let j = 0; j < n; j++) if (i !== j && siemens[i * n + j]! > 0) near[i]!.add(j);
-  const left = new Set(near.keys());
-  const order = new Int32Array(n);
-  for (let step = 0; step < n; step++) {
-    let best = -1;
-    for (const net of left) if (best < 0 || near[net]!.size < near[best]!.size) best = net;
-    order[step] = best;
-    left.delete(best);
-    for (const i of near[best]!) {
-      near[i]!.delete(best);
-      for (const j of near[best]!) if (i !== j) near[i]!.add(j);
-    }
-  }
-  return order;
+  const component = components(circuit);
+  const order: Int32Array[] = new Array<Int32Array>(n);
+  const all = leastDegree(siemens, n);
+  for (const net of component) order[net] ??= all.filter((other) => component[other] === net);
+  return { circuit, component, siemens, order, workspace: newWorkspace(n) };
 }
 
 /**
@@ -62,19 +50,22 @@ function leastDegree(siemens: Float64Array, n: number): Int32Array {
  *   fraction of the current that flows elsewhere, exactly 0 for a bridge.
  */
 export function drive(prepared: Prepared, a: number, b: number, withheld = -1): Drive {
-  const n = prepared.circuit.nets;
+  const { circuit, component, workspace } = prepared;
+  const n = circuit.nets;
   const volts = new Float64Array(n);
   if (a === b) return { ohms: 0, away: 1, volts };
-  const joined = prepared.component[a] === prepared.component[b];
-  if (!joined) return { ohms: Infinity, away: 1, volts };
-  const g = Float64Array.from(prepared.siemens);
-  const own = withheld < 0 ? 0 : prepared.circuit.edges[withheld]!.siemens;
-  if (withheld >= 0) g[a * n + b] = g[b * n + a] = parallelTo(prepared.circuit, withheld);
-  const steps = eliminate(prepared, g, a, b);
+  const home = component[a]!;
+  if (home !== component[b]) return { ohms: Infinity, away: 1, volts };
+  const g = workspace.siemens;
+  g.set(prepared.siemens);
+  const own = withheld < 0 ? 0 : circuit.edges[withheld]!.siemens;
+  if (withheld >= 0) g[a * n + b] = g[b * n + a] = parallelTo(circuit, withheld);
+  const stars = eliminate(workspace, prepared.order[home]!, a, b);
   const rest = g[a * n + b]!;
-  volts[a] = 1 / (rest + own);
-  putBack(steps, volts);
-  return { ohms: volts[a]!, away: withheld < 0 ? 1 : rest / (rest + own), volts };
+  const ohms = 1 / (rest + own);
+  volts[a] = ohms;
+  putBack(stars, volts);
+  return { ohms, away: withheld < 0 ? 1 : rest / (rest + own), volts };
 }
 
 /** Conductance of the edges in parallel to this one, S: a sum, not a difference. */
@@ -86,53 +77,4 @@ function parallelTo(circuit: Circuit, withheld: number): number {
     if (same && index !== withheld) sum += edge.siemens;
   });
   return sum;
-}
-
-interface Star {
-  readonly net: number;
-  readonly neighbours: readonly number[];
-  /** Share of the star's conductance towards each neighbour. */
-  readonly shares: readonly number[];
-}
-
-/** Turns every net but a and b into a mesh between its neighbours; g is changed in place. */
-function eliminate(prepared: Prepared, g: Float64Array, a: number, b: number): Star[] {
-  const n = prepared.circuit.nets;
-  const home = prepared.component[a];
-  const gone = new Uint8Array(n);
-  const steps: Star[] = [];
-  for (const net of prepared.order) {
-    if (net === a || net === b || prepared.component[net] !== home) continue;
-    const neighbours: number[] = [];
-    let sum = 0;
-    for (let i = 0, at = net * n; i < n; i++, at++) {
-      if (gone[i] === 1 || i === net || g[at]! === 0) continue;
-      neighbours.push(i);
-      sum += g[at]!;
-    }
-    const shares = neighbours.map((i) => g[net * n + i]! / sum);
-    for (let i = 1; i < neighbours.length; i++) {
-      const row = neighbours[i]! * n;
-      const through = g[net * n + neighbours[i]!]!;
-      for (let j = 0; j < i; j++) {
-        const column = neighbours[j]!;
-        const added = through * shares[j]!;
-        g[row + column]! += added;
-        g[column * n + neighbours[i]!]! += added;
-      }
-    }
-    gone[net] = 1;
-    steps.push({ net, neighbours, shares });
-  }
-  return steps;
-}
-
-/** Every eliminated net stands at the mean of its neighbours' voltages, weighted by its shares. */
-function putBack(steps: readonly Star[], volts: Float64Array): void {
-  for (let step = steps.length - 1; step >= 0; step--) {
-    const { net, neighbours, shares } = steps[step]!;
-    let sum = 0;
-    for (let i = 0; i < neighbours.length; i++) sum += shares[i]! * volts[neighbours[i]!]!;
-    volts[net] = sum;
-  }
 }
