@@ -3,6 +3,8 @@ import type { Route } from './route';
 import { benchRoutes } from './bench';
 import { computeRoutes } from './compute';
 import { deskRoutes } from './desk';
+import { faultRoutes } from './faults';
+import { searchRoutes } from './search';
 import { statusRoutes } from './status';
 import { ticketRoutes } from './tickets';
 import { photoRoutes } from './photos';
@@ -16,6 +18,8 @@ export const ROUTES: Route[] = [
   benchRoutes,
   photoRoutes,
   deskRoutes,
+  faultRoutes,
+  searchRoutes,
   computeRoutes,
   statusRoutes,
 ].flatMap((area) => Object.values(area as Record<string, Route>));

@@ -1,10 +1,194 @@
-/** Reading the fault base. */
+/** Reading notes and their revisions, and proposing the ones that fit a ticket. */
+import { and, desc, eq, max } from 'drizzle-orm';
+import { alias } from 'drizzle-orm/mysql-core';
+import type { FaultDetail, FaultRow, Revision, RevisionRow } from '@/contracts/faults';
 import type { Queryable } from '@/db/client';
+import { faultNotes, faultRevisions, faultSteps } from '@/db/schema/faults';
+import { users } from '@/db/schema/people';
+import { boards } from '@/db/schema/shop';
+import { tickets } from '@/db/schema/tickets';
 import { sectionWords } from '@/domain/faults/body';
 import { fitOf, type TicketFacts } from '@/domain/faults/fit';
 import { termsOf } from '@/domain/faults/search-terms';
+import { offeredFaultSteps } from '@/domain/faults/states';
+import type { StaffActor } from '../auth/actor';
+import { correctionWaits, mayEdit, mayRead, seesAllRevisions, standingOf } from './policy';
 import { faultIndex } from './search-index';
-import type { Proposal } from './types';
+import type { NoteHead, Proposal } from './types';
+
+type BoardRow = typeof boards.$inferSelect;
+type NoteRow = typeof faultNotes.$inferSelect;
+
+export const boardName = (board: BoardRow | null) =>
+  board && { id: board.id, label: `${board.code} rev ${board.revision}`, maker: board.maker };
+
+/** A note as a line of a list. What only those who work on it may know is left out for the others. */
+export function faultRow(
+  actor: StaffActor,
+  note: NoteRow,
+  board: BoardRow | null,
+  author: string,
+): FaultRow {
+  const edits = mayEdit(actor, note);
+  return {
+    id: note.id,
+    title: note.title,
+    state: note.state,
+    board: boardName(board),
+    partKind: note.partKind,
+    incident: note.incident,
+    symptoms: note.symptoms,
+    author,
+    own: note.createdBy === actor.id,
+    correction: edits && correctionWaits(note),
+    revision: edits ? note.revision : (note.publishedRevision ?? note.revision),
+    publishedRevision: note.publishedRevision,
+    createdAt: note.createdAt.toISOString(),
+    updatedAt: note.updatedAt.toISOString(),
+    publishedAt: note.publishedAt?.toISOString() ?? null,
+  };
+}
+
+/** The head of a note that this person may read, or null. */
+export async function headOf(
+  db: Queryable,
+  actor: StaffActor,
+  id: number,
+): Promise<NoteHead | null> {
+  const [note] = await db.select().from(faultNotes).where(eq(faultNotes.id, id));
+  return note && mayRead(actor, note) ? note : null;
+}
+
+async function readRevision(db: Queryable, noteId: number, revision: number) {
+  const [row] = await db
+    .select({ revision: faultRevisions, author: users.name, board: boards })
+    .from(faultRevisions)
+    .innerJoin(users, eq(users.id, faultRevisions.authorId))
+    .leftJoin(boards, eq(boards.id, faultRevisions.boardId))
+    .where(and(eq(faultRevisions.noteId, noteId), eq(faultRevisions.revision, revision)));
+  return row ?? null;
+}
+
+/**
+ * One note: `newest` as those who edit it need it, `reader` as everybody sees it (the published revision, or the
+ * newest before there is one). Null when it is not there or not open to this person.
+ */
+export async function readFault(
+  db: Queryable,
+  actor: StaffActor,
+  id: number,
+  as: 'reader' | 'newest',
+): Promise<FaultDetail | null> {
+  const authors = alias(users, 'authors');
+  const publishers = alias(users, 'publishers');
+  const [row] = await db
+    .select({ note: faultNotes, author: authors.name, publisher: publishers.name, ticket: tickets })
+    .from(faultNotes)
+    .innerJoin(authors, eq(authors.id, faultNotes.createdBy))
+    .leftJoin(publishers, eq(publishers.id, faultNotes.publishedBy))
+    .leftJoin(tickets, eq(tickets.id, faultNotes.fromTicketId))
+    .where(eq(faultNotes.id, id));
+  if (!row || !mayRead(actor, row.note)) return null;
+  const { note } = row;
+  const edits = mayEdit(actor, note);
+  const published = note.state === 'published' ? note.publishedRevision : null;
+  const shown = as === 'newest' && edits ? note.revision : (published ?? note.revision);
+  const found = await readRevision(db, id, shown);
+  if (!found) throw new Error(`Fault note ${id} has no revision ${shown}`);
+  const { revision, board } = found;
+  return {
+    ...faultRow(actor, note, board, row.author),
+    title: revision.title,
+    partKind: revision.partKind,
+    incident: revision.incident,
+    symptoms: revision.symptoms,
+    shown,
+    body: revision.body,
+    ticket: row.ticket?.number ?? null,
+    publishedBy: row.publisher,
+    mayEdit: edits,
+    steps: offeredFaultSteps(standingOf(actor, note), actor.role),
+    version: note.version,
+  };
+}
+
+/** When each revision reached its readers. */
+async function publishedTimes(db: Queryable, noteId: number): Promise<Map<number, Date>> {
+  const rows = await db
+    .select({ revision: faultSteps.revision, at: max(faultSteps.at) })
+    .from(faultSteps)
+    .where(and(eq(faultSteps.noteId, noteId), eq(faultSteps.toState, 'published')))
+    .groupBy(faultSteps.revision);
+  return new Map(rows.flatMap(({ revision, at }) => (at ? [[revision, new Date(at)]] : [])));
+}
+
+/** The revisions open to this person, newest first; null when the note is not. */
+export async function revisionsOf(
+  db: Queryable,
+  actor: StaffActor,
+  id: number,
+): Promise<RevisionRow[] | null> {
+  const note = await headOf(db, actor, id);
+  if (!note) return null;
+  const [rows, published] = await Promise.all([
+    db
+      .select({
+        revision: faultRevisions.revision,
+        title: faultRevisions.title,
+        at: faultRevisions.at,
+        author: users.name,
+      })
+      .from(faultRevisions)
+      .innerJoin(users, eq(users.id, faultRevisions.authorId))
+      .where(eq(faultRevisions.noteId, id))
+      .orderBy(desc(faultRevisions.revision)),
+    publishedTimes(db, id),
+  ]);
+  const all = seesAllRevisions(actor, note);
+  return rows
+    .filter((row) => all || published.has(row.revision))
+    .map((row) => ({
+      ...row,
+      at: row.at.toISOString(),
+      publishedAt: published.get(row.revision)?.toISOString() ?? null,
+    }));
+}
+
+/** One revision, whole; null when it or its note is not open to this person. */
+export async function revisionOf(
+  db: Queryable,
+  actor: StaffActor,
+  id: number,
+  number: number,
+): Promise<Revision | null> {
+  const note = await headOf(db, actor, id);
+  if (!note) return null;
+  const [found, published] = await Promise.all([
+    readRevision(db, id, number),
+    publishedTimes(db, id),
+  ]);
+  if (!found || !(seesAllRevisions(actor, note) || published.has(number))) return null;
+  const { revision, author, board } = found;
+  return {
+    revision: number,
+    title: revision.title,
+    author,
+    at: revision.at.toISOString(),
+    publishedAt: published.get(number)?.toISOString() ?? null,
+    board: boardName(board),
+    partKind: revision.partKind,
+    incident: revision.incident,
+    symptoms: revision.symptoms,
+    body: revision.body,
+  };
+}
+
+/** The steps a note has taken, oldest first, for those who may read all of it. */
+export async function stepsOf(db: Queryable, actor: StaffActor, id: number) {
+  const note = await headOf(db, actor, id);
+  if (!note || !seesAllRevisions(actor, note)) return [];
+  return db.select().from(faultSteps).where(eq(faultSteps.noteId, id)).orderBy(faultSteps.id);
+}
 
 const excerptOf = (text: string, length = 160) =>
   text.length <= length ? text : `${text.slice(0, text.lastIndexOf(' ', length))} …`;

@@ -1,0 +1,20 @@
+import { faultRoutes } from '@/contracts/faults';
+import { draftFault } from '@/server/faults/commands';
+import { listFaults } from '@/server/faults/list';
+import { faultsCsv } from '@/server/faults/csv';
+import { wantsCsv } from '@/server/http/csv';
+import { serve } from '@/server/http/endpoint';
+import { done } from '@/server/refusal';
+
+export const GET = serve(faultRoutes.list, async ({ app, actor, query, request }) => {
+  if (wantsCsv(request)) return done(faultsCsv(request, app.db, actor, query));
+  const page = await listFaults(app.db, actor, query);
+  return page.ok ? done({ json: page.value }) : page;
+});
+
+export const POST = serve(faultRoutes.create, async ({ app, actor, body, now }) => {
+  const made = await draftFault(app.db, actor, body, now);
+  if (!made.ok) return made;
+  const { id, version } = made.value;
+  return done({ json: made.value, version, headers: { location: `/api/faults/${id}` } });
+});
