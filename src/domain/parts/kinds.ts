@@ -38,7 +38,6 @@ export const INCIDENTS = [
 ] as const;
 export type Incident = (typeof INCIDENTS)[number];
 
-
 /** What the readings say of a part. */
 export const STANDINGS = ['suspect', 'cleared', 'untouched'] as const;
 export type Standing = (typeof STANDINGS)[number];
