@@ -16,6 +16,7 @@ mkdirSync(`${folder}/logs`, { recursive: true });
 
 const asLines = (env) =>
   Object.entries(env)
+    .filter(([, value]) => value !== undefined)
     .map(([name, value]) => `${name}="${value}"\n`)
     .join('');
 
@@ -24,6 +25,7 @@ async function work({ children, untilEnd, ready }) {
   await installServices(children, given);
   const { env, ports } = await startServices(children, folder, {
     given,
+    lasting: false,
     without: options.without.split(','),
   });
   const controls = {

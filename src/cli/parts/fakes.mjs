@@ -1,5 +1,4 @@
 // The local stand-ins for the object store and the mail service.
-import { mkdirSync } from 'node:fs';
 import { connect } from 'node:net';
 import { setTimeout as pause } from 'node:timers/promises';
 import { freshLog, tail } from './files.mjs';
@@ -13,13 +12,15 @@ const scripts = {
 };
 
 /** Start the object store and wait until it accepts connections. */
-export async function startStore(children, folder, ports, secrets) {
+export async function startStore(children, folder, ports, env) {
   const entry = startFake(children, folder, 'object store', 'object-store', scripts.store, {
-    port: ports.store,
-    'control-port': ports.storeControl,
-    data: `${folder}/object-store`,
-    key: secrets.storeKey,
-    secret: secrets.storeSecret,
+    FAKE_STORE_PORT: ports.store,
+    FAKE_STORE_CONTROL_PORT: ports.storeControl,
+    FAKE_STORE_DATA: `${folder}/object-store`,
+    FAKE_STORE_REGION: env.S3_REGION,
+    FAKE_STORE_BUCKETS: env.S3_BUCKET,
+    FAKE_STORE_KEY: env.S3_KEY,
+    FAKE_STORE_SECRET: env.S3_SECRET,
   });
   await untilItListens(entry, ports.store);
   return entry;
@@ -28,23 +29,24 @@ export async function startStore(children, folder, ports, secrets) {
 /** Start the mail catcher and wait until it accepts mail. */
 export async function startMailCatcher(children, folder, ports) {
   const entry = startFake(children, folder, 'mail catcher', 'mail-catcher', scripts.mail, {
-    port: ports.smtp,
-    'http-port': ports.inbox,
-    'control-port': ports.mailControl,
-    data: `${folder}/mail-catcher`,
+    FAKE_MAIL_PORT: ports.smtp,
+    FAKE_MAIL_HTTP_PORT: ports.inbox,
+    FAKE_MAIL_CONTROL_PORT: ports.mailControl,
+    FAKE_MAIL_DATA: `${folder}/mail-catcher`,
   });
   await untilItListens(entry, ports.smtp);
   await untilItListens(entry, ports.inbox);
   return entry;
 }
 
-function startFake(children, folder, name, short, script, options) {
-  mkdirSync(options.data, { recursive: true });
+/** Settings go by the environment: a command line can be read by everybody on the machine. */
+function startFake(children, folder, name, short, script, settings) {
   const log = freshLog(`${folder}/logs`, short);
-  const words = Object.entries(options).flatMap(([key, value]) => [`--${key}`, String(value)]);
-  return children.start(name, process.execPath, ['--import', 'tsx', script, ...words], {
+  const env = Object.fromEntries(Object.entries(settings).map(([key, v]) => [key, String(v)]));
+  return children.start(name, process.execPath, ['--import', 'tsx', script], {
     cwd: root,
     log,
+    env,
     grace: 5_000,
   });
 }

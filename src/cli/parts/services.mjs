@@ -26,6 +26,7 @@ export async function startServices(children, folder, { given, startOver, lastin
   const secrets = keepSecrets(folder);
   const leftOut = broughtAlong(given);
   for (const name of without) leftOut[name] = true;
+  const env = settingsFor({ given, ports, secrets });
   const running = [];
   const add = (title, where, again) =>
     step(`${title} on ${where}`, async () => {
@@ -42,11 +43,11 @@ export async function startServices(children, folder, { given, startOver, lastin
   }
   if (!leftOut.store)
     await add('Object store', `port ${ports.store}`, () =>
-      startStore(children, folder, ports, secrets),
+      startStore(children, folder, ports, env),
     );
   if (!leftOut.mail)
     await add('Mail catcher', `ports ${ports.smtp} and ${ports.inbox}`, () =>
       startMailCatcher(children, folder, ports),
     );
-  return { env: settingsFor({ given, ports, secrets }), ports, running };
+  return { env, ports, running };
 }

@@ -4,6 +4,34 @@ import { loopback } from './ports.mjs';
 /** Ports a full set of local services needs, by the names `ports.json` keeps them under. */
 export const servicePorts = ['database', 'store', 'storeControl', 'smtp', 'inbox', 'mailControl'];
 
+/** Every setting the app knows, by name. */
+export const settingNames = [
+  'NODE_ENV',
+  'HOST',
+  'PORT',
+  'PUBLIC_ORIGIN',
+  'DATABASE_URL',
+  'DB_POOL',
+  'APP_SECRET',
+  'DEMO',
+  'TRUST_PROXY',
+  'S3_ENDPOINT',
+  'S3_PUBLIC_ENDPOINT',
+  'S3_REGION',
+  'S3_BUCKET',
+  'S3_KEY',
+  'S3_SECRET',
+  'SMTP_URL',
+  'MAIL_FROM',
+  'MAIL_INBOX_URL',
+  'SHOP_NAME',
+  'SHOP_ADDRESS',
+  'SHOP_TIMEZONE',
+  'SHOP_CURRENCY',
+  'LOG_LEVEL',
+  'WORKER',
+];
+
 /** Which services the person brings: those get no local stand-in. */
 export const broughtAlong = (given) => ({
   database: Boolean(given.DATABASE_URL),
@@ -42,7 +70,7 @@ export function settingsFor({ given, ports, secrets, databaseName = 'meterwright
     NODE_ENV: 'production',
     DEMO: '1',
     APP_SECRET: secrets.appSecret,
-    S3_REGION: 'eu-central-1',
+    S3_REGION: 'us-east-1',
     S3_BUCKET: 'meterwright',
     MAIL_FROM: 'Harrow Lane Instruments <bench@meterwright.example>',
     SHOP_TIMEZONE: 'Europe/Amsterdam',
@@ -53,7 +81,7 @@ export function settingsFor({ given, ports, secrets, databaseName = 'meterwright
     ...store,
     ...mail,
   };
-  return Object.fromEntries(
-    Object.entries(made).map(([name, value]) => [name, given[name] || value]),
-  );
+  // A setting left empty in the environment counts as not given: undefined keeps it from the app.
+  const names = [...new Set([...settingNames, ...Object.keys(made)])];
+  return Object.fromEntries(names.map((name) => [name, given[name] || made[name]]));
 }
