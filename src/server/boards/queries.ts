@@ -133,3 +133,12 @@ export async function partOfBoard(db: Queryable, boardId: number, ref: string) {
     .where(and(eq(boardParts.boardId, boardId), eq(boardParts.ref, ref)));
   return row ?? null;
 }
+
+export async function countBoards(db: Queryable, q: string): Promise<number> {
+  const pattern = containing(q);
+  const [row] = await db
+    .select({ n: count() })
+    .from(boards)
+    .where(q ? or(like(boards.code, pattern), like(boards.maker, pattern)) : undefined);
+  return row?.n ?? 0;
+}

@@ -1,0 +1,11 @@
+/** Money as people type it. */
+
+/**
+ * A sum in minor units (two decimals) from text such as `72.48`, `72,48`, `72` or `€ 72.48`; null when it is not
+ * a plain sum. Group separators are refused, since `1,234` could be two sums. The greatest is 99,999.99.
+ */
+export function parseMoney(text: string): number | null {
+  const match = /^[€£$]?\s*(\d{1,5})(?:[.,](\d{2}))?$/.exec(text.trim());
+  if (!match) return null;
+  return Number(match[1]) * 100 + Number(match[2] ?? 0);
+}
