@@ -2,7 +2,7 @@
 import { mkdirSync, readdirSync, rmSync } from 'node:fs';
 import { ensureBuild } from './build.mjs';
 import { ensureCommands } from './commands.mjs';
-import { freshLog, readJson, tail, writeWhole } from './files.mjs';
+import { freshLog, readJson, readText, tail, writeWhole } from './files.mjs';
 import { ensurePackages } from './packages.mjs';
 import { passingFolder } from './passing.mjs';
 import { root } from './place.mjs';
@@ -51,10 +51,13 @@ async function work({ children, folder }, json) {
   else sayTable(rows);
 }
 
-/** Files with rows: not the shared type, nor a name with a leading underscore. */
+/** Files that offer rows; the others are what those share. */
 const files = () =>
   readdirSync(folderOfRows)
-    .filter((name) => name.endsWith('.bench.ts'))
+    .filter((name) => name.endsWith('.ts'))
+    .filter((name) =>
+      /export (async function|const) rows\b/.test(readText(`${folderOfRows}/${name}`)),
+    )
     .sort();
 
 async function measure(children, folder, name, told) {
