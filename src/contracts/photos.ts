@@ -55,6 +55,8 @@ export type BeginPhoto = z.output<typeof BeginPhoto>;
 /** Where to put the file: one PUT of its bytes, with these headers, before `expiresAt`. */
 export const Upload = z.object({
   photo: z.string(),
+  /** Of the waiting photo: `If-Match` when the upload is called off. */
+  version: z.int(),
   url: z.string(),
   headers: z.record(z.string(), z.string()),
   expiresAt: Moment,

@@ -7,6 +7,7 @@ import { outbox } from '@/db/schema/outbox';
 import { sendResetLink } from '../auth/reset';
 import { unseal } from '../auth/secrets';
 import { sendMail } from '../mail/send';
+import { finishPhoto } from '../photos/finish';
 import type { Runtime } from '../runtime';
 import type { Job } from './commands';
 import { tidy } from './tidy';
@@ -37,7 +38,8 @@ async function takeJob(app: Runtime, now: Date) {
 async function perform(app: Runtime, job: Job): Promise<void> {
   if (job.kind === 'mail') await sendMail(app.settings, job.mail);
   else if (job.kind === 'reset') await sendResetLink(app, job.email, new Date());
-  else throw new Error(`No worker for ${job.kind}.`);
+  // A refused photo is a finished job too; only a store that fails brings it back.
+  else await finishPhoto(app, job.photoId, new Date());
 }
 
 /** Does one due job; false when there was none. */

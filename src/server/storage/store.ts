@@ -26,6 +26,13 @@ function client(s: StoreSettings, endpoint: string | undefined): S3Client {
     requestChecksumCalculation: 'WHEN_REQUIRED',
     responseChecksumValidation: 'WHEN_REQUIRED',
     maxAttempts: 3,
+    // A store that hangs must not hold requests for ever.
+    requestHandler: {
+      connectionTimeout: 3000,
+      requestTimeout: 15_000,
+      socketTimeout: 15_000,
+      throwOnRequestTimeout: true,
+    },
   });
 }
 
@@ -63,6 +70,19 @@ function makeStore(s: StoreSettings) {
         const got = await inside.send(new GetObjectCommand({ Bucket, Key }));
         if ((got.ContentLength ?? 0) > limit) throw new RangeError(`Object over ${limit} bytes.`);
         return (await got.Body?.transformToByteArray()) ?? null;
+      } catch (error) {
+        if (statusOf(error) === 404) return null;
+        throw error;
+      }
+    },
+
+    /** The object as a stream with its length, or null when there is none. */
+    async open(Key: string): Promise<{ body: ReadableStream; bytes: number } | null> {
+      try {
+        const got = await inside.send(new GetObjectCommand({ Bucket, Key }));
+        if (!got.Body) return null;
+        const body = got.Body.transformToWebStream() as ReadableStream;
+        return { body, bytes: got.ContentLength ?? 0 };
       } catch (error) {
         if (statusOf(error) === 404) return null;
         throw error;
