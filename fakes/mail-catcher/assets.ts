@@ -19,6 +19,7 @@ const assets: Record<string, { type: string; file: string | URL }> = {
   '/fonts/sans-400.woff2': font('sans', 400),
   '/fonts/sans-600.woff2': font('sans', 600),
   '/fonts/mono-400.woff2': font('mono', 400),
+  '/fonts/mono-600.woff2': font('mono', 600),
 };
 
 /** The style sheet or a font, or undefined when the path is neither. */

@@ -64,7 +64,8 @@ export async function readMail(source: Buffer): Promise<ReadMail> {
       const value = line.slice(colon + 1).replace(/\r?\n\s*/g, ' ');
       return { name: line.slice(0, colon), value: value.trim() };
     }),
-    text: mail.text,
+    // A message of HTML alone is read with an empty text.
+    text: mail.text === '' ? undefined : mail.text,
     html: mail.html === false ? undefined : mail.html,
     links: findLinks(mail),
     attachments: mail.attachments.map(({ filename, contentType, content }, index) => ({

@@ -88,7 +88,7 @@ function chooseParts(upload: Upload, document: string): Array<[number, RecordFac
     );
   }
   let before = 0;
-  return named.map((node, index) => {
+  const chosen = named.map((node): [number, RecordFacts] => {
     const number = partNumber(childText(node, 'PartNumber'));
     if (number <= before) {
       throw new StoreError('InvalidPartOrder', 'The parts must be named in ascending order.');
@@ -103,11 +103,13 @@ function chooseParts(upload: Upload, document: string): Array<[number, RecordFac
     if (facts === undefined || etag !== facts.etag || wrongSum) {
       throw new StoreError('InvalidPart', `Part ${number} was not uploaded or is another one.`);
     }
-    if (index < named.length - 1 && facts.size < smallestPart) {
-      throw new StoreError('EntityTooSmall', `Part ${number} has under ${smallestPart} bytes.`);
-    }
     return [number, facts];
   });
+  const small = chosen.slice(0, -1).find(([, facts]) => facts.size < smallestPart);
+  if (small !== undefined) {
+    throw new StoreError('EntityTooSmall', `Part ${small[0]} has under ${smallestPart} bytes.`);
+  }
+  return chosen;
 }
 
 function joinedFacts(upload: Upload, parts: readonly RecordFacts[], now: number): RecordFacts {
