@@ -1,5 +1,6 @@
 /** Every endpoint of the API, for the description and for the tests that walk them all. */
 import type { Route } from './route';
+import { auditRoutes } from './audit';
 import { benchRoutes } from './bench';
 import { computeRoutes } from './compute';
 import { deskRoutes } from './desk';
@@ -7,9 +8,11 @@ import { faultRoutes } from './faults';
 import { searchRoutes } from './search';
 import { statusRoutes } from './status';
 import { ticketRoutes } from './tickets';
+import { peopleRoutes } from './people';
 import { photoRoutes } from './photos';
 import { serviceRoutes } from './service';
 import { sessionRoutes } from './session';
+import { tokenRoutes } from './tokens';
 
 export const ROUTES: Route[] = [
   serviceRoutes,
@@ -21,5 +24,8 @@ export const ROUTES: Route[] = [
   faultRoutes,
   searchRoutes,
   computeRoutes,
+  tokenRoutes,
+  peopleRoutes,
+  auditRoutes,
   statusRoutes,
 ].flatMap((area) => Object.values(area as Record<string, Route>));

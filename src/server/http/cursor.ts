@@ -60,3 +60,19 @@ export function pageOf<Row>(
   const next = rows.length > limit && last !== undefined ? writeCursor(sort, placeOf(last)) : null;
   return { items, next };
 }
+
+/** Every row of a list, read in batches: what an export walks. */
+export async function* everyRow<Row>(
+  read: (limit: number, after: Place | undefined) => Promise<Row[]>,
+  placeOf: (row: Row) => Place,
+): AsyncGenerator<Row> {
+  const batch = 500;
+  let after: Place | undefined;
+  for (;;) {
+    const rows = await read(batch, after);
+    yield* rows;
+    const last = rows.at(-1);
+    if (rows.length < batch || last === undefined) return;
+    after = placeOf(last);
+  }
+}

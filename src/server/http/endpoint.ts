@@ -121,7 +121,7 @@ function toResponse(route: Route, value: Answer<Route>): Response {
   if (value instanceof Response) return value;
   const headers = new Headers(value.headers);
   if (value.version !== undefined) headers.set('etag', `"${value.version}"`);
-  if (route.status === 204) return new Response(null, { status: 204, headers });
+  if (route.answer === null) return new Response(null, { status: route.status, headers });
   headers.set('content-type', 'application/json');
   return new Response(JSON.stringify(value.json), { status: route.status, headers });
 }
