@@ -1,4 +1,4 @@
-import type { Evidence } from './screen';
+import type { Evidence } from './evidence';
 import type { Scene } from './scene';
 import type { Trial } from './trial';
 import { setTrial, trialOhms } from './trial';
@@ -37,17 +37,18 @@ export function nodesFor(
   k: number,
   fineness: Fineness,
 ): [Nodes, Nodes] {
-  const [low, high] = [0, 1].map((end) => corner(scene, evidence, trial, j, k, end, end));
-  if (k < 0) return [cut(scene, j, widest(evidence, low!, high!), fineness), NONE];
-  const [right, left] = [
-    corner(scene, evidence, trial, j, k, 1, 0),
-    corner(scene, evidence, trial, j, k, 0, 1),
-  ];
-  const widthJ = Math.max(widest(evidence, low!, right), widest(evidence, left, high!));
-  const widthK = Math.max(widest(evidence, low!, left), widest(evidence, right, high!));
+  const { corners } = trial;
+  corner(scene, evidence, trial, j, k, 0, 0);
+  corner(scene, evidence, trial, j, k, 1, 1);
+  if (k < 0) return [cut(scene, j, widest(evidence, corners, 0, 3), fineness), NONE];
+  corner(scene, evidence, trial, j, k, 1, 0);
+  corner(scene, evidence, trial, j, k, 0, 1);
+  const widthJ = Math.max(widest(evidence, corners, 0, 1), widest(evidence, corners, 2, 3));
+  const widthK = Math.max(widest(evidence, corners, 0, 2), widest(evidence, corners, 1, 3));
   return [cut(scene, j, widthJ, fineness), cut(scene, k, widthK, fineness)];
 }
 
+/** Writes what every reading shows with both modes at these ends (0 low, 1 high) to the trial's corners. */
 function corner(
   scene: Scene,
   evidence: Evidence,
@@ -56,22 +57,27 @@ function corner(
   k: number,
   endJ: number,
   endK: number,
-): Float64Array {
-  const end = (mode: number, which: number): number =>
-    mode < 0 ? 0 : which === 0 ? scene.modes[mode]!.low : scene.modes[mode]!.high;
-  setTrial(scene, trial, j, end(j, endJ), k, end(k, endK));
-  return Float64Array.from(evidence.observations, (seen, r) => {
-    const shown = Math.log(trialOhms(scene, trial, r) + seen.floor);
-    return seen.over ? Math.min(shown, seen.y + 1) : shown;
-  });
+): void {
+  const lnJ = endJ === 0 ? scene.modes[j]!.low : scene.modes[j]!.high;
+  const lnK = k < 0 ? 0 : endK === 0 ? scene.modes[k]!.low : scene.modes[k]!.high;
+  setTrial(scene, trial, j, lnJ, k, lnK);
+  const { corners } = trial;
+  const at = (endJ + 2 * endK) * evidence.count;
+  for (let r = 0; r < evidence.count; r++) {
+    const shown = Math.log(trialOhms(evidence, trial, r) + evidence.floor[r]!);
+    const top = evidence.y[r]! + 1;
+    corners[at + r] = evidence.over[r] === 1 && shown > top ? top : shown;
+  }
 }
 
-function widest(evidence: Evidence, from: Float64Array, to: Float64Array): number {
+function widest(evidence: Evidence, corners: Float64Array, from: number, to: number): number {
+  const { count, deviation } = evidence;
   let width = 0;
-  evidence.observations.forEach((seen, r) => {
-    const step = from[r] === to[r] ? 0 : Math.abs(to[r]! - from[r]!);
-    if (step > UNSEEN * Math.sqrt(seen.variance)) width = Math.max(width, step);
-  });
+  for (let r = 0; r < count; r++) {
+    const step = Math.abs(corners[from * count + r]! - corners[to * count + r]!);
+    // Not a number where both are infinite: nothing moves there.
+    if (step > width && step > UNSEEN * deviation[r]!) width = step;
+  }
   return width;
 }
 

@@ -1,6 +1,6 @@
 import { MISPROBE } from './assumptions';
+import type { Evidence } from './evidence';
 import { LOG_ROOT_TAU, normalCdf } from './normal';
-import type { Evidence } from './screen';
 import type { Scene } from './scene';
 import type { Trial } from './trial';
 import { trialOhms } from './trial';
@@ -12,8 +12,11 @@ const NEGLIGIBLE = 1e-5;
 export interface Joint {
   readonly middle: Float64Array;
   readonly covariance: Float64Array;
+  /** Standard deviation that each part gives each reading, part by part. */
+  readonly shares: Float64Array;
   readonly factor: Float64Array;
   readonly solved: Float64Array;
+  readonly keptAs: Int32Array;
   /** Chance that each reading is a misprobe, filled by {@link jointLikelihood}. */
   readonly doubt: Float64Array;
 }
@@ -23,6 +26,8 @@ export function newJoint(scene: Scene): Joint {
   return {
     middle: new Float64Array(n),
     covariance: new Float64Array(n * n),
+    shares: new Float64Array(n * (scene.parts + 1)),
+    keptAs: new Int32Array(n),
     factor: new Float64Array(n * n),
     solved: new Float64Array(n),
     doubt: new Float64Array(n),
@@ -40,28 +45,29 @@ export function predictJoint(
 ): void {
   const n = scene.aims.length;
   const row = scene.parts + 1;
-  const shares = new Float64Array(n * row);
+  const { shares } = joint;
+  shares.fill(0);
   for (let r = 0; r < n; r++) {
-    const aim = scene.aims[r]!;
-    if (aim.ohms === Infinity) {
+    if (evidence.ohms[r] === Infinity) {
       joint.middle[r] = Infinity;
       continue;
     }
-    const s = aim.setting;
-    const setting = scene.settings[s]!;
-    const ohms = trialOhms(scene, trial, r) + evidence.observations[r]!.floor;
+    const s = evidence.setting[r]!;
+    const { siemens, between } = scene.settings[s]!;
+    const ohms = trialOhms(evidence, trial, r) + evidence.floor[r]!;
     joint.middle[r] = Math.log(ohms);
-    const zj = aim.toPart[trial.j]!;
-    const zk = aim.toPart[trial.k]!;
+    const at = r * row;
+    const zj = evidence.toPart[at + trial.j]!;
+    const zk = evidence.toPart[at + trial.k]!;
     const p = trial.k11[s]! * zj + trial.k12[s]! * zk;
     const q = trial.k12[s]! * zj + trial.k22[s]! * zk;
     for (let part = 0; part < scene.parts; part++) {
       if (part === trial.j || part === trial.k) continue;
       const z =
-        aim.toPart[part]! -
-        p * setting.between[trial.j * row + part]! -
-        q * setting.between[trial.k * row + part]!;
-      const share = ((setting.siemens[part]! * z * z) / ohms) * scene.spread[part]!;
+        evidence.toPart[at + part]! -
+        p * between[trial.j * row + part]! -
+        q * between[trial.k * row + part]!;
+      const share = ((siemens[part]! * z * z) / ohms) * scene.spread[part]!;
       if (share > NEGLIGIBLE) shares[part * n + r] = share;
     }
     const newZj = trial.jj[s]! * zj + trial.jk[s]! * zk;
@@ -72,7 +78,7 @@ export function predictJoint(
       shares[trial.k * n + r] = ((trial.siemensK[s]! * newZk * newZk) / ohms) * spreadK;
   }
   sumSquares(shares, scene.parts, n, joint.covariance);
-  for (let r = 0; r < n; r++) joint.covariance[r * n + r]! += evidence.observations[r]!.variance;
+  for (let r = 0; r < n; r++) joint.covariance[r * n + r]! += evidence.variance[r]!;
 }
 
 /** covariance = Σ over parts of share·shareᵀ, lower triangle. */
@@ -99,21 +105,21 @@ function sumSquares(
  * misprobe is set aside, so that it bends no other. OL is a censored reading, P(R > over range), weighed last.
  */
 export function jointLikelihood(evidence: Evidence, joint: Joint): number {
-  const n = evidence.observations.length;
-  const { covariance, factor, solved, middle, doubt } = joint;
+  const n = evidence.count;
+  const { covariance, factor, solved, middle, doubt, keptAs } = joint;
   let total = 0;
   let kept = 0;
-  const order = evidence.order;
-  const keptAs = new Int32Array(n);
-  for (const r of order) {
-    const seen = evidence.observations[r]!;
+  for (let step = 0; step < n; step++) {
+    const r = evidence.order[step]!;
+    const over = evidence.over[r] === 1;
+    const misprobe = evidence.misprobe[r]!;
     if (middle[r] === Infinity) {
-      const sound = seen.over ? 1 - MISPROBE : 0;
-      total += Math.log(sound + seen.misprobe);
-      doubt[r] = seen.misprobe / (sound + seen.misprobe);
+      const sound = over ? 1 - MISPROBE : 0;
+      total += Math.log(sound + misprobe);
+      doubt[r] = misprobe / (sound + misprobe);
       continue;
     }
-    let error = seen.y - middle[r]!;
+    let error = evidence.y[r]! - middle[r]!;
     let variance = covariance[r * n + r]!;
     for (let i = 0; i < kept; i++) {
       const q = keptAs[i]!;
@@ -125,14 +131,14 @@ export function jointLikelihood(evidence: Evidence, joint: Joint): number {
       variance -= entry * entry;
     }
     // Rounding may eat a variance that readings of one point have in common: the meter's own remains.
-    variance = Math.max(variance, 0.5 * seen.variance);
+    variance = Math.max(variance, 0.5 * evidence.variance[r]!);
     const root = Math.sqrt(variance);
-    const sound = seen.over
+    const sound = over
       ? (1 - MISPROBE) * normalCdf(-error / root)
       : ((1 - MISPROBE) * Math.exp(-0.5 * (error / root) ** 2 - LOG_ROOT_TAU)) / root;
-    total += Math.log(sound + seen.misprobe);
-    doubt[r] = seen.misprobe / (sound + seen.misprobe);
-    if (seen.over || sound < seen.misprobe) continue;
+    total += Math.log(sound + misprobe);
+    doubt[r] = misprobe / (sound + misprobe);
+    if (over || sound < misprobe) continue;
     factor[kept * n + kept] = root;
     solved[kept] = error / root;
     keptAs[kept++] = r;

@@ -1,5 +1,5 @@
 import { LOG_ROOT_TAU } from './normal';
-import type { Evidence } from './screen';
+import type { Evidence } from './evidence';
 import type { Scene } from './scene';
 import { boundAt } from './tolerance-bound';
 
@@ -36,10 +36,13 @@ export function pairBounds(scene: Scene, evidence: Evidence): PairBounds {
   const k11 = new Float64Array(settings * 2);
   const k12 = new Float64Array(settings * 2);
   const k22 = new Float64Array(settings * 2);
-  const readings = readingTable(evidence);
-  const order = byMisfit(scene, evidence);
-  let most = 0;
-  for (const r of order) most += readings.inside[r]!;
+  const { toPart, ohms } = evidence;
+  const value = evidence.y.map((y, r) => Math.exp(y) - evidence.floor[r]!);
+  const inside = evidence.variance.map((variance, r) =>
+    evidence.over[r] === 1 ? 0 : -0.5 * Math.log(variance) - LOG_ROOT_TAU,
+  );
+  const order = byMisfit(evidence);
+  const most = inside.reduce((sum, one) => sum + one, 0);
 
   const bound = (j: number, k: number, least: number): number => {
     const partJ = scene.modes[j]!.part;
@@ -61,20 +64,20 @@ export function pairBounds(scene: Scene, evidence: Evidence): PairBounds {
       }
     }
     let total = most;
-    for (const r of order) {
-      const aim = scene.aims[r]!;
-      const at = aim.setting * 2;
-      const zj = aim.toPart[partJ]!;
-      const zk = aim.toPart[partK]!;
+    for (let i = 0; i < order.length; i++) {
+      const r = order[i]!;
+      const at = evidence.setting[r]! * 2;
+      const zj = toPart[r * row + partJ]!;
+      const zk = toPart[r * row + partK]!;
       const [jj, jk, kk] = [zj * zj, zj * zk, zk * zk];
-      const low = aim.ohms - (k11[at]! * jj + k12[at]! * jk + k22[at]! * kk);
-      const high = aim.ohms - (k11[at + 1]! * jj + k12[at + 1]! * jk + k22[at + 1]! * kk);
-      let near = 0;
-      if (high < readings.value[r]!) near = high;
-      else if (!readings.over[r] && low > readings.value[r]!) near = low;
-      else continue;
-      total -= readings.inside[r]!;
-      total += outside(evidence, readings, r, Math.max(near, 1e-6));
+      const high = ohms[r]! - (k11[at + 1]! * jj + k12[at + 1]! * jk + k22[at + 1]! * kk);
+      let near = high;
+      if (high >= value[r]!) {
+        if (evidence.over[r] === 1) continue;
+        near = ohms[r]! - (k11[at]! * jj + k12[at]! * jk + k22[at]! * kk);
+        if (near <= value[r]!) continue;
+      }
+      total += outside(evidence, r, near > 1e-6 ? near : 1e-6) - inside[r]!;
       if (total < least) return total;
     }
     return total;
@@ -82,40 +85,23 @@ export function pairBounds(scene: Scene, evidence: Evidence): PairBounds {
   return { bound };
 }
 
-interface ReadingTable {
-  readonly value: Float64Array;
-  readonly over: Uint8Array;
-  readonly inside: Float64Array;
-  readonly least: Float64Array;
-}
-
-function readingTable({ observations }: Evidence): ReadingTable {
-  return {
-    value: Float64Array.from(observations, (o) => Math.exp(o.y) - o.floor),
-    over: Uint8Array.from(observations, (o) => (o.over ? 1 : 0)),
-    inside: Float64Array.from(observations, (o) =>
-      o.over ? 0 : -0.5 * Math.log(o.variance) - LOG_ROOT_TAU,
-    ),
-    least: Float64Array.from(observations, (o) => Math.log(o.misprobe)),
-  };
-}
-
-function outside(evidence: Evidence, readings: ReadingTable, r: number, near: number): number {
-  const seen = evidence.observations[r]!;
-  if (near === Infinity) return readings.least[r]!;
-  const shown = Math.log(near + seen.floor);
-  const variance = seen.variance + boundAt(evidence.bounds, r, shown);
-  const misfit = (-0.5 * (seen.y - shown) ** 2) / variance;
-  const density = seen.over ? misfit : misfit - 0.5 * Math.log(variance) - LOG_ROOT_TAU;
-  return Math.max(density, readings.least[r]!);
+function outside(evidence: Evidence, r: number, near: number): number {
+  const worst = evidence.logMisprobe[r]!;
+  if (near === Infinity) return worst;
+  const shown = Math.log(near + evidence.floor[r]!);
+  const variance = evidence.variance[r]! + boundAt(evidence.bounds, r, shown);
+  const misfit = (-0.5 * (evidence.y[r]! - shown) ** 2) / variance;
+  if (misfit < worst - 20) return worst;
+  const density =
+    evidence.over[r] === 1 ? misfit : misfit - 0.5 * Math.log(variance) - LOG_ROOT_TAU;
+  return Math.max(density, worst);
 }
 
 /** Readings that the healthy network explains worst come first: they rule most pairs out at once. */
-function byMisfit(scene: Scene, { observations }: Evidence): Int32Array {
-  const misfit = observations.map((seen, r) => {
-    const shown = Math.log(scene.aims[r]!.ohms + seen.floor);
-    if (seen.over) return Math.max(0, seen.y - shown);
-    return shown === Infinity ? 1e9 : Math.abs(seen.y - shown);
-  });
-  return Int32Array.from([...misfit.keys()].sort((a, b) => misfit[b]! - misfit[a]!));
+function byMisfit({ count, over, y, healthy }: Evidence): Int32Array {
+  const misfit = (r: number): number => {
+    if (over[r] === 1) return Math.max(0, y[r]! - healthy[r]!);
+    return healthy[r] === Infinity ? 1e9 : Math.abs(y[r]! - healthy[r]!);
+  };
+  return Int32Array.from([...Array(count).keys()].sort((a, b) => misfit(b) - misfit(a)));
 }

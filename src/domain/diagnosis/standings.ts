@@ -35,17 +35,16 @@ function standingOf(after: number, before: number, seen: boolean): Standing {
 function seenParts({ workshop, hypotheses, probability }: Posterior): Uint8Array {
   const { scene, evidence, trial } = workshop;
   const seen = new Uint8Array(scene.parts);
-  const healthy = evidence.observations.map((one, r) => Math.log(scene.aims[r]!.ohms + one.floor));
   scene.modes.forEach((mode, m) => {
     for (const end of [mode.low, mode.high]) {
       if (seen[mode.part] === 1) return;
       setTrial(scene, trial, m, end, -1, 0);
-      evidence.observations.forEach((one, r) => {
-        const shown = Math.log(trialOhms(scene, trial, r) + one.floor);
-        const top = one.over ? one.y : Infinity;
-        const step = Math.abs(Math.min(shown, top) - Math.min(healthy[r]!, top));
-        if (step > NOTICED * Math.sqrt(one.variance)) seen[mode.part] = 1;
-      });
+      for (let r = 0; r < evidence.count; r++) {
+        const shown = Math.log(trialOhms(evidence, trial, r) + evidence.floor[r]!);
+        const top = evidence.over[r] === 1 ? evidence.y[r]! : Infinity;
+        const step = Math.abs(Math.min(shown, top) - Math.min(evidence.healthy[r]!, top));
+        if (step > NOTICED * evidence.deviation[r]!) seen[mode.part] = 1;
+      }
     }
   });
   // A fault that only shows beside another counts once the two together are likely.

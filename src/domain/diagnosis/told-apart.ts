@@ -44,23 +44,22 @@ function lookOf(posterior: Posterior, marginals: Marginals, part: number): Float
     if (likeliest < 0 || modes[one.mode]! > modes[scene.modes[likeliest]!.mode]!) likeliest = index;
   });
   const { low, high } = scene.modes[likeliest]!;
-  const n = evidence.observations.length;
+  const n = evidence.count;
   const look = new Float64Array(2 * n);
   [low, high].forEach((end, which) => {
     setTrial(scene, trial, likeliest, end, -1, 0);
-    evidence.observations.forEach((seen, r) => {
-      const shown = Math.log(trialOhms(scene, trial, r) + seen.floor);
-      look[which * n + r] = seen.over ? Math.min(shown, seen.y) : shown;
-    });
+    for (let r = 0; r < n; r++) {
+      const shown = Math.log(trialOhms(evidence, trial, r) + evidence.floor[r]!);
+      look[which * n + r] = evidence.over[r] === 1 ? Math.min(shown, evidence.y[r]!) : shown;
+    }
   });
   return look;
 }
 
 function alike(posterior: Posterior, one: Float64Array, other: Float64Array): boolean {
-  const { observations } = posterior.workshop.evidence;
-  const n = observations.length;
+  const { count, deviation } = posterior.workshop.evidence;
   return one.every((value, at) => {
     const step = value === other[at] ? 0 : Math.abs(value - other[at]!);
-    return step <= ALIKE * Math.sqrt(observations[at % n]!.variance);
+    return step <= ALIKE * deviation[at % count]!;
   });
 }

@@ -1,3 +1,4 @@
+import type { Evidence } from './evidence';
 import type { Scene } from './scene';
 import { siemensIn } from './scene';
 
@@ -12,8 +13,11 @@ const LEAST_DETERMINANT = 1e-14;
  * (Woodbury 1950). Buffers are reused: one trial at a time.
  */
 export interface Trial {
+  /** Parts changed; the number of parts where none is. */
   j: number;
   k: number;
+  /** Entries per reading of the transfers: parts + 1. */
+  readonly row: number;
   readonly siemensJ: Float64Array;
   readonly siemensK: Float64Array;
   readonly k11: Float64Array;
@@ -24,13 +28,16 @@ export interface Trial {
   readonly jk: Float64Array;
   readonly kj: Float64Array;
   readonly kk: Float64Array;
+  /** What the readings show at the four corners of two modes' ranges, for choosing nodes. */
+  readonly corners: Float64Array;
 }
 
 export function newTrial(scene: Scene): Trial {
   const make = (): Float64Array => new Float64Array(scene.settings.length);
   return {
-    j: 0,
-    k: 0,
+    j: scene.parts,
+    k: scene.parts,
+    row: scene.parts + 1,
     siemensJ: make(),
     siemensK: make(),
     k11: make(),
@@ -40,6 +47,7 @@ export function newTrial(scene: Scene): Trial {
     jk: make(),
     kj: make(),
     kk: make(),
+    corners: new Float64Array(4 * scene.aims.length),
   };
 }
 
@@ -80,15 +88,15 @@ export function setTrial(
   }
 }
 
-/** Resistance that an aim shows in the trial, Ω. */
-export function trialOhms(scene: Scene, trial: Trial, aim: number): number {
-  const { setting, ohms, toPart } = scene.aims[aim]!;
-  const zj = toPart[trial.j]!;
-  const zk = toPart[trial.k]!;
+/** Resistance that a reading's aim shows in the trial, Ω. */
+export function trialOhms(evidence: Evidence, trial: Trial, r: number): number {
+  const setting = evidence.setting[r]!;
+  const zj = evidence.toPart[r * trial.row + trial.j]!;
+  const zk = evidence.toPart[r * trial.row + trial.k]!;
   const drop =
     trial.k11[setting]! * zj * zj +
     2 * trial.k12[setting]! * zj * zk +
     trial.k22[setting]! * zk * zk;
-  const left = ohms - drop;
+  const left = evidence.ohms[r]! - drop;
   return left > LEAST_PREDICTED ? left : LEAST_PREDICTED;
 }

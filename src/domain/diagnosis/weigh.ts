@@ -2,7 +2,7 @@ import type { Fineness, Nodes } from './grid';
 import { nodesFor } from './grid';
 import type { Joint } from './joint';
 import { jointLikelihood, predictJoint } from './joint';
-import type { Evidence } from './screen';
+import type { Evidence } from './evidence';
 import { screen } from './screen';
 import type { Scene } from './scene';
 import type { Trial } from './trial';
@@ -44,7 +44,7 @@ export function screened(
 ): number {
   const nodes = nodesFor(scene, evidence, trial, j, k, fineness);
   return overNodes(scene, trial, j, k, nodes, () =>
-    screen(scene, evidence, trial, nodes[0].spread, nodes[1].spread),
+    screen(evidence, trial, nodes[0].spread, nodes[1].spread),
   );
 }
 
@@ -72,7 +72,7 @@ export function weighed(
   const nodes: [Nodes, Nodes] =
     j < 0 ? [none, none] : nodesFor(scene, evidence, trial, j, k, fineness);
   let best = { value: -Infinity, lnJ: 0, lnK: 0 };
-  const doubt = new Float64Array(evidence.observations.length);
+  const doubt = new Float64Array(evidence.count);
   const logLikelihood = overNodes(scene, trial, j, k, nodes, (lnJ, lnK) => {
     predictJoint(scene, evidence, trial, nodes[0].spread, nodes[1].spread, joint);
     const value = jointLikelihood(evidence, joint);

@@ -1,5 +1,7 @@
 import type { Network, Probe } from '@/domain/network/types';
 import type { Incident } from '@/domain/parts/kinds';
+import type { Evidence } from './evidence';
+import { evidenceOf } from './evidence';
 import type { Joint } from './joint';
 import { newJoint } from './joint';
 import type { Observation } from './meter';
@@ -8,9 +10,6 @@ import type { Priors } from './priors';
 import { priorsOf } from './priors';
 import type { Scene } from './scene';
 import { sceneOf } from './scene';
-import type { Evidence } from './screen';
-import { orderOf } from './screen';
-import { toleranceBounds } from './tolerance-bound';
 import type { Trial } from './trial';
 import { newTrial } from './trial';
 import type { SeenFault } from './types';
@@ -37,7 +36,7 @@ export function openWorkshop(
 ): Workshop {
   const modes = partModes(network);
   const scene = sceneOf(network, modes, probes);
-  const evidence = { observations, order: orderOf(observations), bounds: toleranceBounds(scene) };
+  const evidence = evidenceOf(scene, observations);
   const priors = priorsOf(network, modes, incident, seen);
   return { scene, evidence, priors, trial: newTrial(scene), joint: newJoint(scene) };
 }
