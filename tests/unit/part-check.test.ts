@@ -99,6 +99,12 @@ describe('out of circuit', () => {
     });
   });
 
+  test('a trimmer is judged end to end, and the wiper is said', () => {
+    const verdict = judge({ kind: 'trimmer', marking: '103', value: 5000, ...out });
+    expect(verdict.reasons.join(' ')).toContain('from the wiper any lower value is right');
+    expect(verdict.next).toBe('Measure it again from end to end.');
+  });
+
   test('over range on a part above the range judges nothing', () => {
     expect(judge({ kind: 'resistor', ohms: 100e6, value: 'OL', ...out }).verdict).toBe(
       'inconclusive',

@@ -42,4 +42,7 @@ export interface PartRefusal {
   readonly reason: string;
 }
 
+/** Where a reading lies, the meter's own error granted. */
+export type Side = 'within' | 'above' | 'below' | 'near-short' | 'beyond-range';
+
 export type PartCheckAnswer = PartVerdict | PartRefusal;

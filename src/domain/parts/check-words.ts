@@ -1,8 +1,7 @@
 import { formatOhms } from '@/domain/quantities/format';
-import type { Side } from './check';
 import type { Expected } from './check-expected';
 import type { KnownPart } from './check-input';
-import type { PartCheckInput, PartVerdict } from './check-types';
+import type { PartCheckInput, PartVerdict, Side } from './check-types';
 import { COOLING_MINUTES, defaultTolerance } from './defaults';
 import type { Mode } from './kinds';
 import { kindLabels, modeLabels } from './words';
@@ -58,6 +57,7 @@ export function nextStep(
     return 'Give the part’s ohms or its marking.';
   }
   if (input.inCircuit && side !== 'above') return LIFT;
+  if (part.kind === 'trimmer' && side === 'below') return 'Measure it again from end to end.';
   if (isJunction(part) && side === 'below') {
     return 'Swap the leads and measure again: only the higher of the two readings counts.';
   }

@@ -10,7 +10,7 @@ import type { Expected } from './check-expected';
 import { expectedOf } from './check-expected';
 import type { KnownPart } from './check-input';
 import { knownPart, refuseNumbers } from './check-input';
-import type { PartCheckAnswer, PartCheckInput, PartVerdict } from './check-types';
+import type { PartCheckAnswer, PartCheckInput, PartVerdict, Side } from './check-types';
 import { nextStep, reasonsFor } from './check-words';
 import { failureShare } from './failure-shares';
 import { kindRate } from './kind-rates';
@@ -23,9 +23,6 @@ const FITS_UP_TO = 0.1;
 const NEAR_SHORT_OHMS = 10;
 /** Leads that nobody subtracted, in ohms; on finer meters twice the resolution. */
 const LEAD_OHMS = 0.2;
-
-/** Where a reading lies, the meter's own error granted. */
-export type Side = 'within' | 'above' | 'below' | 'near-short' | 'beyond-range';
 
 /**
  * Judges one part by one reading, knowing nothing of the circuit around it.
