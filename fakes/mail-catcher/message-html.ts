@@ -9,7 +9,7 @@ export const messagePolicy =
   "base-uri 'none'; frame-ancestors 'self'; " +
   'sandbox allow-popups allow-popups-to-escape-sandbox';
 
-const anchor = /<a\b((?:"[^"]*"|'[^']*'|[^'">])*)>/gi;
+const anchor = /<a\b((?:"[^"]*"|'[^']*'|[^'"<>])*)>/gi;
 const attribute = /([^\s"'=<>/]+)(?:\s*=\s*("[^"]*"|'[^']*'|[^\s"'=<>`]+))?/g;
 const followed = /^["']?\s*(https?:|mailto:|tel:|#)/i;
 

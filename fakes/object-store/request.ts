@@ -53,7 +53,8 @@ export function parseRequest(incoming: IncomingMessage): StoreRequest {
     key,
     query: parseQuery(mark < 0 ? '' : url.slice(mark + 1)),
     headers,
-    body: incoming,
+    // A handler that stops reading must still be able to answer: the connection stays.
+    body: incoming.iterator({ destroyOnReturn: false }),
   };
 }
 

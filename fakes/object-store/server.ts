@@ -1,4 +1,5 @@
 import { randomBytes } from 'node:crypto';
+import { closeSync } from 'node:fs';
 import { createServer, type IncomingMessage, type ServerResponse } from 'node:http';
 import { setTimeout as pause } from 'node:timers/promises';
 import { FaultQueue } from '../shared/fault-queue';
@@ -97,7 +98,9 @@ async function answerTo(
     answer = errorAnswer(told, (incoming.url ?? '').split('?')[0] ?? '', entry.id);
     damage = undefined;
   }
-  return drop ? undefined : { answer, damage };
+  if (!drop) return { answer, damage };
+  if (!Buffer.isBuffer(answer.body)) closeSync(answer.body.descriptor);
+  return undefined;
 }
 
 async function handle(

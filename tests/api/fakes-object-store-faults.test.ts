@@ -3,6 +3,7 @@ import { readdir, stat } from 'node:fs/promises';
 import { request } from 'node:http';
 import { createServer } from 'node:net';
 import { join } from 'node:path';
+import { Readable } from 'node:stream';
 import {
   CompleteMultipartUploadCommand,
   CreateMultipartUploadCommand,
@@ -119,12 +120,40 @@ describe('faults asked for', () => {
     const s3 = client(store.port, lean);
     await ask({ match: { method: 'PUT' }, kind: 'corrupt' });
     expect(await codeOf(s3.send(put('in')))).toBe('XAmzContentSHA256Mismatch');
-    await ask({ match: { method: 'PUT' }, kind: 'truncate' });
-    expect(await codeOf(s3.send(put('in')))).toBe('IncompleteBody');
+    for (const size of [7, 3_000_000]) {
+      await ask({ match: { method: 'PUT' }, kind: 'truncate' });
+      expect(await codeOf(s3.send(put('in', Buffer.alloc(size))))).toBe('IncompleteBody');
+    }
     await ask({ match: { method: 'PUT' }, kind: 'corrupt' });
     const url = await getSignedUrl(s3, put('in', ''));
     expect((await fetch(url, { method: 'PUT', body: 'content' })).status).toBe(200);
     expect(await read('in')).not.toBe('content');
+  });
+
+  it('change a stream on the way in, which the store notices by the checksum in its trailer', async () => {
+    const silent = () => undefined;
+    const logger = { debug: silent, info: silent, warn: silent, error: silent };
+    const s3 = client(store.port, { logger });
+    let announced = '';
+    s3.middlewareStack.add(
+      (next) => (args) => {
+        announced =
+          (args.request as { headers: Record<string, string> }).headers['x-amz-content-sha256'] ??
+          '';
+        return next(args);
+      },
+      { step: 'finalizeRequest', priority: 'low', name: 'look' },
+    );
+    const stream = () =>
+      new PutObjectCommand({
+        ...put('stream').input,
+        Body: Readable.from([Buffer.alloc(50_000, 'a'), Buffer.alloc(50_000, 'b')]),
+        ContentLength: 100_000,
+      });
+    await ask({ match: { method: 'PUT' }, kind: 'corrupt' });
+    expect(await codeOf(s3.send(stream()))).toBe('BadDigest');
+    expect(announced).toBe('STREAMING-UNSIGNED-PAYLOAD-TRAILER');
+    expect(await codeOf(s3.send(stream()))).toBe('done');
   });
 
   it('are refused when they make no sense', async () => {
