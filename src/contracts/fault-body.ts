@@ -52,7 +52,7 @@ const marks = z
   .max(4, 'More than 4 marks on one text.')
   .refine((all) => new Set(all.map((m) => m.type)).size === all.length, 'The same mark twice.');
 
-const InlineNode: z.ZodType<Inline> = z.discriminatedUnion('type', [
+const InlineNode: z.ZodType<Inline, Inline> = z.discriminatedUnion('type', [
   z.strictObject({
     type: z.literal('text'),
     text: plain(BODY_LIMITS.text, 1),
@@ -90,8 +90,8 @@ const leaves = [
 ] as const;
 
 /** A block that may hold lists down to `depth`; below that there is no list to be had. */
-function blockOf(depth: number): z.ZodType<Block> {
-  if (depth === 0) return z.discriminatedUnion('type', leaves) as z.ZodType<Block>;
+function blockOf(depth: number): z.ZodType<Block, Block> {
+  if (depth === 0) return z.discriminatedUnion('type', leaves) as z.ZodType<Block, Block>;
   const item = z.strictObject({
     type: z.literal('listItem'),
     content: z
@@ -104,7 +104,7 @@ function blockOf(depth: number): z.ZodType<Block> {
     ...leaves,
     z.strictObject({ type: z.literal('bulletList'), content }),
     z.strictObject({ type: z.literal('orderedList'), content }),
-  ]) as z.ZodType<Block>;
+  ]) as z.ZodType<Block, Block>;
 }
 
 const Blocks = z.array(blockOf(BODY_LIMITS.listDepth)).max(BODY_LIMITS.nodes);
@@ -118,7 +118,7 @@ function countNodes(nodes: readonly unknown[] | undefined): number {
 
 const bytesOf = (value: unknown) => new TextEncoder().encode(JSON.stringify(value)).length;
 
-export const FaultBodySchema: z.ZodType<FaultBody> = z
+export const FaultBodySchema: z.ZodType<FaultBody, FaultBody> = z
   .strictObject({ symptom: Blocks, cause: Blocks, proof: Blocks, repair: Blocks })
   .refine(
     (body) => SECTIONS.reduce((sum, s) => sum + countNodes(body[s]), 0) <= BODY_LIMITS.nodes,

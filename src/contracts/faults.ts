@@ -96,13 +96,51 @@ export const FaultsQuery = ListQuery.extend({
 });
 export type FaultsQuery = z.output<typeof FaultsQuery>;
 
+/** What the page's address may say; a mistyped part of it is left out rather than refused. */
+const PageQuery = z.object({
+  q: z.string().trim().max(200).catch('').default(''),
+  state: z.enum(FAULT_STATES).optional().catch(undefined),
+  board: Id.optional().catch(undefined),
+  kind: z.enum(PART_KINDS).optional().catch(undefined),
+  symptom: z.enum(SYMPTOM_CODES).optional().catch(undefined),
+  sort: z
+    .enum(['best', ...FAULT_SORTS])
+    .catch('best')
+    .default('best'),
+  page: z.coerce.number().int().min(1).max(10_000).catch(1).default(1),
+});
+export type FaultPageQuery = z.output<typeof PageQuery>;
+export const faultPageQuery = (address: URLSearchParams): FaultPageQuery =>
+  PageQuery.parse(Object.fromEntries(address));
+
 export const TakeFaultStep = z.strictObject({
   step: z.enum(FAULT_STEPS),
   note: prose(1000).default(''),
 });
 export type TakeFaultStep = z.output<typeof TakeFaultStep>;
 
+/** The step as a page's form sends it: the version it was offered for comes along. */
+export const FaultStepForm = z.object({
+  step: z.enum(FAULT_STEPS),
+  note: prose(1000).default(''),
+  version: z.coerce.number().int().positive(),
+});
+
 const ById = z.object({ id: Id });
+export const FaultAddress = ById;
+
+const Pair = z
+  .string()
+  .regex(/^\d{1,6}-\d{1,6}$/)
+  .transform((text) => text.split('-').map(Number) as [number, number]);
+const NoteAddress = z.object({
+  /** One revision, or two compared: `?compare=2-3`. */
+  revision: Id.optional().catch(undefined),
+  compare: Pair.optional().catch(undefined),
+});
+export type NoteAddress = z.output<typeof NoteAddress>;
+export const noteAddress = (address: URLSearchParams): NoteAddress =>
+  NoteAddress.parse(Object.fromEntries(address));
 
 export const faultRoutes = {
   list: defineRoute({

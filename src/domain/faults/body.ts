@@ -60,6 +60,36 @@ export function sectionWords(blocks: readonly Block[]): string {
   return blocks.map(blockWords).join(' ').replace(/\s+/g, ' ').trim();
 }
 
+/** A section as plain lines, a line for every paragraph, list entry, reading and photo: for comparing revisions. */
+export function sectionLines(blocks: readonly Block[], indent = ''): string {
+  return blocks
+    .map((block) => {
+      switch (block.type) {
+        case 'paragraph':
+          return `${indent}${inlineWords(block.content)}`;
+        case 'caution':
+          return `${indent}Caution: ${inlineWords(block.content)}`;
+        case 'bulletList':
+        case 'orderedList':
+          return block.content
+            .map((item, i) => {
+              const mark = block.type === 'bulletList' ? '•' : `${i + 1}.`;
+              return `${indent}${mark} ${sectionLines(item.content, `${indent}  `).trimStart()}`;
+            })
+            .join('\n');
+        case 'reading': {
+          const { from, to, position, typed, expected } = block.attrs;
+          const between = to === '' ? from : `${from} – ${to}`;
+          const wanted = expected === null ? '' : ` (expected ${expected})`;
+          return `${indent}${[between, position, typed].filter(Boolean).join(' · ')}${wanted}`;
+        }
+        case 'photo':
+          return `${indent}[photo ${block.attrs.id}] ${block.attrs.caption}`.trimEnd();
+      }
+    })
+    .join('\n');
+}
+
 /** Every node of a section, whatever its depth. */
 function* nodesOf(blocks: readonly Block[]): Generator<Block | Inline> {
   for (const block of blocks) {

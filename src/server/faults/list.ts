@@ -1,5 +1,5 @@
 /** The lists of the fault base that come from the database: every state, not only what is published. */
-import { and, asc, desc, eq, gt, inArray, like, or, sql, type SQL } from 'drizzle-orm';
+import { and, asc, count, desc, eq, gt, inArray, like, or, sql, type SQL } from 'drizzle-orm';
 import { alias } from 'drizzle-orm/mysql-core';
 import type { FaultRow, FaultsQuery } from '@/contracts/faults';
 import type { Queryable } from '@/db/client';
@@ -23,7 +23,9 @@ function open(actor: StaffActor): SQL | undefined {
   );
 }
 
-function conditions(actor: StaffActor, query: FaultsQuery): (SQL | undefined)[] {
+type Choice = Pick<FaultsQuery, 'q' | 'state' | 'board' | 'kind' | 'symptom'>;
+
+function conditions(actor: StaffActor, query: Choice): (SQL | undefined)[] {
   const pattern = containing(query.q);
   return [
     open(actor),
@@ -69,6 +71,52 @@ export async function listFaults(
     items: page.items.map(({ note, board, author }) => faultRow(actor, note, board, author)),
     next: page.next,
   });
+}
+
+/** A numbered page of one state's notes with how many there are, for the page that shows them. */
+export async function listFaultsPage(
+  db: Queryable,
+  actor: StaffActor,
+  query: Choice & { sort: string },
+  page: number,
+  size: number,
+): Promise<{ items: FaultRow[]; total: number }> {
+  const where = and(...conditions(actor, query));
+  const column = query.sort.endsWith('title') ? faultNotes.title : faultNotes.updatedAt;
+  const order = query.sort === 'title' || query.sort === 'updated' ? asc : desc;
+  const [rows, [counted]] = await Promise.all([
+    db
+      .select({ note: faultNotes, board: boards, author: users.name })
+      .from(faultNotes)
+      .innerJoin(users, eq(users.id, faultNotes.createdBy))
+      .leftJoin(boards, eq(boards.id, faultNotes.boardId))
+      .where(where)
+      .orderBy(order(column), order(faultNotes.id))
+      .limit(size)
+      .offset((page - 1) * size),
+    db.select({ n: count() }).from(faultNotes).where(where),
+  ]);
+  return {
+    items: rows.map(({ note, board, author }) => faultRow(actor, note, board, author)),
+    total: counted?.n ?? 0,
+  };
+}
+
+/** How many notes wait in the review queue for this person. */
+export async function countWaiting(db: Queryable, actor: StaffActor): Promise<number> {
+  const correction = and(
+    eq(faultNotes.state, 'published'),
+    gt(faultNotes.revision, faultNotes.publishedRevision),
+  );
+  const [counted] = await db
+    .select({ n: count() })
+    .from(faultNotes)
+    .where(
+      roleMay(actor.role, 'fault.publish')
+        ? or(eq(faultNotes.state, 'in-review'), correction)
+        : eq(faultNotes.state, 'in-review'),
+    );
+  return counted?.n ?? 0;
 }
 
 export type Work = FaultRow & {
