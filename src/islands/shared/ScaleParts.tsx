@@ -43,36 +43,36 @@ export function Band({ span, className }: { span: Span; className: string }) {
   );
 }
 
-/** The needle's uncertainty: a thin sector that opens from its foot. */
+/** The needle's uncertainty: a thin sector that opens from its foot, as its two halves. */
 export function Sector({ at, span }: { at: number; span: Span }) {
-  const width = span.to - span.from;
-  if (width <= 0) return null;
-  return (
-    <svg
-      className="scale-sector"
-      x={`${span.from}%`}
-      width={`${width}%`}
+  if (span.to <= span.from) return null;
+  const half = (from: number, to: number, side: string) => (
+    <rect
+      className={`scale-sector scale-sector-${side}`}
+      x={`${from}%`}
+      width={`${Math.max(0, to - from)}%`}
       y={2}
       height={BASE - 2}
-      viewBox="0 0 100 100"
-      preserveAspectRatio="none"
-    >
-      <path d={`M${((at - span.from) / width) * 100} 100L0 0H100z`} />
-    </svg>
+    />
+  );
+  return (
+    <>
+      {half(span.from, at, 'left')}
+      {half(at, span.to, 'right')}
+    </>
   );
 }
 
+/** A pointed head and its stem, cut from one rectangle: a rectangle's place is what browsers let glide. */
 export function Needle({ at, tone }: { at: number; tone: Tone }) {
   return (
-    <svg
+    <rect
       className={`scale-needle tone-${tone}`}
       x={`${at}%`}
-      overflow="visible"
-      width="1"
-      height={HEIGHT}
-    >
-      <path d={`M-4.5 0h9L1 8V${BASE}h-2V8z`} />
-    </svg>
+      width={9}
+      height={BASE}
+      transform="translate(-4.5 0)"
+    />
   );
 }
 
