@@ -12,8 +12,14 @@ export async function startApp(children, folder, env, entry) {
     ? [entry]
     : [`${root}/node_modules/astro/astro.js`, 'dev', '--host', env.HOST, '--port', env.PORT];
   const app = children.start('app', process.execPath, words, { cwd: root, log, env });
-  await untilReady(app, `http://${loopback}:${env.PORT}/api/health/ready`);
+  await untilReady(app, `http://${reachable(env.HOST)}:${env.PORT}/api/health/ready`);
   return app;
+}
+
+/** A host to ask the app on, for the host it listens on. */
+function reachable(host) {
+  if (host === '0.0.0.0' || host === '::') return loopback;
+  return host.includes(':') ? `[${host}]` : host;
 }
 
 /** Wait for 200 from the readiness address. @throws Stop with the app's last lines */

@@ -21,8 +21,14 @@ export function manageChildren(folder, runId) {
   let living = [];
   let ending = false;
 
-  const save = () =>
-    writeWhole(record, JSON.stringify({ runId, children: living.map(described) }, null, 2), 0o600);
+  // A full disk must not keep a child from being ended; a run is also found again by its mark.
+  const save = (children = living.map(described)) => {
+    try {
+      writeWhole(record, JSON.stringify({ runId, children }, null, 2), 0o600);
+    } catch (error) {
+      if (error.code !== 'ENOSPC') throw error;
+    }
+  };
 
   /** Start a program; its output goes to `log`, or to the terminal when there is none. */
   function start(name, command, args, { env = {}, cwd, log, grace = 10_000, input } = {}) {
@@ -69,7 +75,7 @@ export function manageChildren(folder, runId) {
     ending = true;
     for (const entry of [...living].reverse()) await end(entry);
     await endPids(markedWith(runId));
-    writeWhole(record, JSON.stringify({ runId, children: [] }));
+    save([]);
   }
 
   return { start, run, end, endAll, folder };
@@ -107,12 +113,12 @@ function signal(pid, name) {
 }
 
 /**
- * End what a killed run left running on this folder: recorded children whose number, start time
+ * End what the killed run `runId` left running on this folder: recorded children whose number, start time
  * and command line all still agree, then whatever else carries that run's mark.
  * Answers the names of the children found alive.
  */
-export async function endLeftOvers(folder) {
-  const { runId, children = [] } = readJson(`${folder}/children.json`, {});
+export async function endLeftOvers(folder, runId) {
+  const { children = [] } = readJson(`${folder}/children.json`, {});
   const left = children.filter(stillLives).reverse();
   for (const child of left) await endGroup(child.pid, child.grace ?? 10_000);
   const strays = runId ? markedWith(runId) : [];

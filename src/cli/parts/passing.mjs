@@ -25,7 +25,7 @@ async function clearKilledRuns() {
     const lock = readJson(`${folder}/${lockFile}`, undefined);
     // Without a lock the run is either just beginning (its maker lives) or was killed there.
     if (lock ? stillLives(lock) : existsSync(`/proc/${maker}`)) continue;
-    await endLeftOvers(folder);
+    await endLeftOvers(folder, lock?.runId);
     rmSync(folder, { recursive: true, force: true });
   }
 }

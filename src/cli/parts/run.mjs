@@ -15,14 +15,14 @@ export async function oneRun({ folder, lockFile, purpose }, work) {
     throw new Stop('Meterwright runs on Linux: Debian 12 or later.');
   const lock = await takeLock(folder, lockFile, purpose);
   const asked = watchForEnd();
-  const left = await endLeftOvers(folder);
+  const left = await endLeftOvers(folder, lock.stale?.runId);
   if (lock.stale || left.length > 0) sayWhatWasLeft(left);
   const children = manageChildren(folder, lock.runId);
   const ready = () => (asked.ready = true);
   let code;
   try {
     const worked = work({ children, folder, untilEnd: asked.promise, ready });
-    code = await Promise.race([worked, asked.promise]);
+    code = await Promise.race([worked, asked.promise, unexpected()]);
   } catch (error) {
     code = 1;
     if (!asked.reason) sayWhy(error);
@@ -33,6 +33,9 @@ export async function oneRun({ folder, lockFile, purpose }, work) {
   if (asked.reason) return asked.ready ? 0 : 130;
   return code ?? 0;
 }
+
+/** Rejects with an error nobody waits for, so that it too ends what was started. */
+const unexpected = () => new Promise((_, reject) => process.on('uncaughtException', reject));
 
 function sayWhatWasLeft(left) {
   say(

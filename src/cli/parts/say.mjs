@@ -67,6 +67,8 @@ export function sayWhy(error) {
     if (error.detail) say(`\n${indent(error.detail)}`);
   } else if (error?.code === 'ENOSPC') {
     say('\nThe disk is full: free some space, then run the command again.');
+  } else if (['EACCES', 'EPERM', 'EROFS'].includes(error?.code) && error.path) {
+    say(`\nThis user may not write to ${error.path}: give this user the folder, then start again.`);
   } else {
     say(`\n${error?.stack ?? error}`);
   }
