@@ -1,8 +1,11 @@
 import { groupsOf } from './told-apart';
 import { marginalsOf } from './marginals';
 import { observe } from './meter';
+import { doubtsOf } from './doubts';
+import { byProbability, leadersOf } from './leaders';
 import type { Posterior } from './posterior';
 import { posteriorOf } from './posterior';
+import { reasonsOf } from './reasons';
 import { standingsOf } from './standings';
 import type { DiagnosisAnswer, DiagnosisInput, Fault, RankedHypothesis } from './types';
 import { openWorkshop } from './workshop';
@@ -28,24 +31,26 @@ export function diagnose(input: DiagnosisInput): DiagnosisAnswer {
   const posterior = posteriorOf(workshop);
   const marginals = marginalsOf(posterior);
   const parts = standingsOf(posterior, marginals);
+  const groups = groupsOf(posterior, marginals, parts);
+  const order = byProbability(posterior);
+  const leaders = leadersOf(posterior, order);
   return {
     healthy: posterior.probability[0]!,
     entropy: marginals.entropy,
-    hypotheses: ranked(posterior, input.limit ?? DEFAULT_LIMIT),
+    hypotheses: ranked(posterior, order, input.limit ?? DEFAULT_LIMIT),
     parts,
-    groups: groupsOf(posterior, marginals, parts),
+    groups,
     next: [],
-    doubtful: [],
-    reasons: [],
+    doubtful: doubtsOf(input.network, input.readings, workshop, leaders),
+    reasons: reasonsOf(input, workshop, leaders, parts, groups),
   };
 }
 
 /** The likeliest faulty hypotheses, best first. */
-function ranked(posterior: Posterior, limit: number): RankedHypothesis[] {
+function ranked(posterior: Posterior, order: readonly number[], limit: number): RankedHypothesis[] {
   const { scene } = posterior.workshop;
-  const order = [...posterior.hypotheses.keys()].slice(1);
-  order.sort((a, b) => posterior.probability[b]! - posterior.probability[a]!);
-  return order.slice(0, limit).map((index) => {
+  const faulty = order.filter((index) => index !== 0);
+  return faulty.slice(0, limit).map((index) => {
     const { j, k } = posterior.hypotheses[index]!;
     const faults: Fault[] = [j, k]
       .filter((m) => m >= 0)

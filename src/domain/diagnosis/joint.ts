@@ -17,8 +17,6 @@ export interface Joint {
   readonly factor: Float64Array;
   readonly solved: Float64Array;
   readonly keptAs: Int32Array;
-  /** Chance that each reading is a misprobe, filled by {@link jointLikelihood}. */
-  readonly doubt: Float64Array;
 }
 
 export function newJoint(scene: Scene): Joint {
@@ -30,7 +28,6 @@ export function newJoint(scene: Scene): Joint {
     keptAs: new Int32Array(n),
     factor: new Float64Array(n * n),
     solved: new Float64Array(n),
-    doubt: new Float64Array(n),
   };
 }
 
@@ -106,7 +103,7 @@ function sumSquares(
  */
 export function jointLikelihood(evidence: Evidence, joint: Joint): number {
   const n = evidence.count;
-  const { covariance, factor, solved, middle, doubt, keptAs } = joint;
+  const { covariance, factor, solved, middle, keptAs } = joint;
   let total = 0;
   let kept = 0;
   for (let step = 0; step < n; step++) {
@@ -116,7 +113,6 @@ export function jointLikelihood(evidence: Evidence, joint: Joint): number {
     if (middle[r] === Infinity) {
       const sound = over ? 1 - MISPROBE : 0;
       total += Math.log(sound + misprobe);
-      doubt[r] = misprobe / (sound + misprobe);
       continue;
     }
     let error = evidence.y[r]! - middle[r]!;
@@ -137,7 +133,6 @@ export function jointLikelihood(evidence: Evidence, joint: Joint): number {
       ? (1 - MISPROBE) * normalCdf(-error / root)
       : ((1 - MISPROBE) * Math.exp(-0.5 * (error / root) ** 2 - LOG_ROOT_TAU)) / root;
     total += Math.log(sound + misprobe);
-    doubt[r] = misprobe / (sound + misprobe);
     if (over || sound < misprobe) continue;
     factor[kept * n + kept] = root;
     solved[kept] = error / root;

@@ -11,9 +11,18 @@ const LOG_SOUND = Math.log(1 - MISPROBE);
  * ln likelihood of the readings in a trial, its two faults spread log-normally by these standard deviations
  * of ln Ω. Readings err independently here, tolerances included; what the spread faults have in common is
  * kept by passing their estimate from reading to reading (Kalman 1960, two states). A reading better
- * explained by a misprobe is set aside at the misprobe's own weight.
+ * explained by a misprobe is set aside at the misprobe's own weight. Leaves the estimated shift of both faults'
+ * ln Ω in the trial.
+ *
+ * @param doubt filled with the chance that each reading is a misprobe, where given.
  */
-export function screen(evidence: Evidence, trial: Trial, spreadJ: number, spreadK: number): number {
+export function screen(
+  evidence: Evidence,
+  trial: Trial,
+  spreadJ: number,
+  spreadK: number,
+  doubt?: Float64Array,
+): number {
   let meanJ = 0;
   let meanK = 0;
   let pjj = spreadJ * spreadJ;
@@ -30,6 +39,7 @@ export function screen(evidence: Evidence, trial: Trial, spreadJ: number, spread
     const misprobe = evidence.misprobe[r]!;
     if (base === Infinity) {
       total += over === 1 ? LOG_SOUND : evidence.logMisprobe[r]!;
+      if (doubt !== undefined) doubt[r] = over === 1 ? 0 : 1;
       continue;
     }
     const zj = toPart[r * row + trial.j]!;
@@ -52,6 +62,7 @@ export function screen(evidence: Evidence, trial: Trial, spreadJ: number, spread
     if (over === 1) {
       const past = normalCdf(-error / Math.sqrt(variance));
       total += Math.log((1 - MISPROBE) * past + misprobe);
+      if (doubt !== undefined) doubt[r] = misprobe / ((1 - MISPROBE) * past + misprobe);
       continue;
     }
     const square = (error * error) / variance;
@@ -60,6 +71,7 @@ export function screen(evidence: Evidence, trial: Trial, spreadJ: number, spread
         ? 0
         : ((1 - MISPROBE) * Math.exp(-0.5 * square - LOG_ROOT_TAU)) / Math.sqrt(variance);
     total += Math.log(density + misprobe);
+    if (doubt !== undefined) doubt[r] = misprobe / (density + misprobe);
     if (density < misprobe) continue;
     meanJ += (byJ * error) / variance;
     meanK += (byK * error) / variance;
@@ -67,5 +79,7 @@ export function screen(evidence: Evidence, trial: Trial, spreadJ: number, spread
     pkk -= (byK * byK) / variance;
     pjk -= (byJ * byK) / variance;
   }
+  trial.shiftJ = meanJ;
+  trial.shiftK = meanK;
   return total;
 }

@@ -7,12 +7,15 @@ import type { PartStanding } from './types';
 
 /** A reading notices a fault that moves it by this many standard deviations of the meter. */
 const NOTICED = 2;
-/** A part that may have failed with less than this is cleared, if the readings can see it at all. */
-const CLEARED = 0.02;
-/** So is one whose odds the readings cut to less than this share of what they were. */
-const CUT = 0.3;
-/** A part no reading sees is a suspect all the same from here. */
-const SUSPECT = 0.5;
+/** From here a part is a suspect whatever its odds were. */
+const SUSPECT = 0.05;
+/** So is a rare one whose odds the readings at least doubled. */
+const RISEN = 2;
+const RISEN_FROM = 0.01;
+/** A part is cleared when the readings cut its odds below this share of what they were. */
+const CUT = 0.5;
+/** A part of which no reading tells is a suspect only when the incident alone makes it likely. */
+const LIKELY = 0.5;
 
 /** Standing of every part, in the order of the network. */
 export function standingsOf(posterior: Posterior, marginals: Marginals): PartStanding[] {
@@ -27,8 +30,9 @@ export function standingsOf(posterior: Posterior, marginals: Marginals): PartSta
 }
 
 function standingOf(after: number, before: number, seen: boolean): Standing {
-  if (!seen) return after >= SUSPECT ? 'suspect' : 'untouched';
-  return after < CLEARED || after < CUT * before ? 'cleared' : 'suspect';
+  if (!seen) return after >= LIKELY ? 'suspect' : 'untouched';
+  if (after >= SUSPECT || (after >= RISEN_FROM && after >= RISEN * before)) return 'suspect';
+  return after < CUT * before ? 'cleared' : 'untouched';
 }
 
 /** 1 for every part of which some mode, on its own, would move some reading by more than the meter's doubt. */
@@ -49,7 +53,7 @@ function seenParts({ workshop, hypotheses, probability }: Posterior): Uint8Array
   });
   // A fault that only shows beside another counts once the two together are likely.
   hypotheses.forEach(({ j, k }, index) => {
-    if (probability[index]! < SUSPECT) return;
+    if (probability[index]! < LIKELY) return;
     for (const m of [j, k]) if (m >= 0) seen[scene.modes[m]!.part] = 1;
   });
   return seen;

@@ -16,6 +16,9 @@ export interface Trial {
   /** Parts changed; the number of parts where none is. */
   j: number;
   k: number;
+  /** How far the readings would move the faults' ln Ω, left by the screening. */
+  shiftJ: number;
+  shiftK: number;
   /** Entries per reading of the transfers: parts + 1. */
   readonly row: number;
   readonly siemensJ: Float64Array;
@@ -37,6 +40,8 @@ export function newTrial(scene: Scene): Trial {
   return {
     j: scene.parts,
     k: scene.parts,
+    shiftJ: 0,
+    shiftK: 0,
     row: scene.parts + 1,
     siemensJ: make(),
     siemensK: make(),

@@ -51,8 +51,6 @@ export function screened(
 /** What the full covariance says of a hypothesis. */
 export interface Weighed {
   readonly logLikelihood: number;
-  /** Chance that each reading is a misprobe. */
-  readonly doubt: Float64Array;
   /** The resistances that fit best, ln Ω. */
   readonly lnJ: number;
   readonly lnK: number;
@@ -72,15 +70,11 @@ export function weighed(
   const nodes: [Nodes, Nodes] =
     j < 0 ? [none, none] : nodesFor(scene, evidence, trial, j, k, fineness);
   let best = { value: -Infinity, lnJ: 0, lnK: 0 };
-  const doubt = new Float64Array(evidence.count);
   const logLikelihood = overNodes(scene, trial, j, k, nodes, (lnJ, lnK) => {
     predictJoint(scene, evidence, trial, nodes[0].spread, nodes[1].spread, joint);
     const value = jointLikelihood(evidence, joint);
-    if (value > best.value) {
-      best = { value, lnJ, lnK };
-      doubt.set(joint.doubt);
-    }
+    if (value > best.value) best = { value, lnJ, lnK };
     return value;
   });
-  return { logLikelihood, doubt, lnJ: best.lnJ, lnK: best.lnK };
+  return { logLikelihood, lnJ: best.lnJ, lnK: best.lnK };
 }
