@@ -27,6 +27,8 @@ export const PAGES: Record<string, PageRule> = {
   '/reset/[token]': { get: 'public', post: 'public' },
   '/invite/[token]': { get: 'public', post: 'public' },
   '/account': { get: 'account.own', post: 'account.own' },
+  '/account/second-factor': { get: 'account.own', post: 'account.own' },
+  '/account/tokens': { get: 'account.own', post: 'account.own' },
 
   // The shop
   '/queue': { get: 'ticket.read' },
@@ -44,7 +46,9 @@ export const PAGES: Record<string, PageRule> = {
   '/boards/[id]': { get: 'board.read' },
 
   // The owner
-  '/people': { get: 'people.manage', post: 'people.manage' },
+  '/people': { get: 'people.manage' },
+  '/people/invite': { get: 'people.manage', post: 'people.manage' },
+  '/people/[id]': { get: 'people.manage', post: 'people.manage' },
   '/audit': { get: 'audit.read' },
   '/outbox': { get: 'audit.read', post: 'audit.read' },
 };

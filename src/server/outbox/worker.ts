@@ -10,11 +10,8 @@ import { sendMail } from '../mail/send';
 import { finishPhoto } from '../photos/finish';
 import type { Runtime } from '../runtime';
 import type { Job } from './commands';
+import { LEASE_MS, pauseMs, TRIES } from './pace';
 import { tidy } from './tidy';
-
-const TRIES = 10;
-const LEASE_MS = 60_000;
-const pauseMs = (attempts: number) => Math.min(3_600_000, 1000 * 2 ** attempts);
 
 /** Takes one due job: it is leased for a minute, so a worker that dies gives it back by itself. */
 async function takeJob(app: Runtime, now: Date) {
