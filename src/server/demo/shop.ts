@@ -13,7 +13,8 @@ import { demoBoards, demoCustomers, demoScenarios } from './content';
 import { seedFaults } from './faults';
 import { seedPeople } from './people';
 import { seedPhotos } from './photos';
-import { writeTickets, type DemoShop } from './tickets';
+import type { DemoShop } from './bench';
+import { writeTickets } from './tickets';
 
 const MARK = 'demo';
 type State = 'empty' | 'begun' | 'done' | 'real';
@@ -52,6 +53,14 @@ export async function writeDemoShop(
     ),
   );
   if (!counter || !tech || !senior) throw new Error('The demo staff is not whole.');
+  const others = ['odile.marrant', 'tamsin.quill'];
+  const techs = [
+    tech,
+    tech,
+    ...(await Promise.all(
+      others.map((who) => personByEmail(db, ids, `${who}@meterwright.example`)),
+    )),
+  ];
   say('boards');
   const boards = demoBoards();
   const boardIds = new Map<string, number>();
@@ -64,7 +73,7 @@ export async function writeDemoShop(
     boards,
     scenarios: demoScenarios(),
     customers: demoCustomers(),
-    staff: { counter, tech, senior },
+    staff: { counter, techs, senior },
   };
   await writeTickets(demo, now);
   say('fault notes');

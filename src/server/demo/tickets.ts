@@ -1,34 +1,12 @@
 /** Sixty tickets in all stages, taken in and moved by the same commands the shop uses, with dates in the past. */
-import { randomUUID } from 'node:crypto';
-import type { Database } from '@/db/client';
-import { predictUnder } from '@/domain/diagnosis/predict';
-import { drawnNetwork } from '@/domain/bench/judge-sheet';
-import { formatTrade } from '@/domain/quantities/format';
 import { CAUTION_CODES, type Accessory } from '@/domain/tickets/vocabulary';
 import type { Step } from '@/domain/tickets/stages';
-import type { StaffRole, Permission } from '@/domain/people';
-import { grant, type Granted } from '../auth/actor';
-import { enterReading } from '../bench/commands';
 import { takeIn } from '../intake/commands';
 import { writeNote, writeToCustomer, writeToShop } from '../messages/commands';
 import { accountOf } from '../customers/commands';
-import type { Outcome } from '../refusal';
 import { takeStep, tickCaution } from '../tickets/commands';
 import { ticketByNumber, type TicketFull } from '../tickets/queries';
-import type { Shop } from '../tickets/types';
-import type { Chance } from './chance';
-import type { DemoBoard, DemoCustomer, DemoScenario } from './content';
-
-type Person = { id: number; name: string; email: string; role: StaffRole };
-export type DemoShop = {
-  db: Database;
-  shop: Shop;
-  chance: Chance;
-  boards: readonly DemoBoard[];
-  scenarios: readonly DemoScenario[];
-  customers: readonly DemoCustomer[];
-  staff: { counter: Person; tech: Person; senior: Person };
-};
+import { as, atWork, DAY, HOUR, measure, must, type DemoShop } from './bench';
 
 /** The steps that lead to each place a demo ticket stands at. */
 const PATHS: readonly (readonly Step[])[] = [
@@ -69,50 +47,6 @@ const MESSAGES = [
   'Please keep the old parts for me.',
 ];
 
-function must<T>(outcome: Outcome<T>, what: string): T {
-  if (!outcome.ok) throw new Error(`Demo data, ${what}: ${outcome.reason}`);
-  return outcome.value;
-}
-function as<P extends Permission>(person: Person, permission: P): Granted<P> {
-  const granted = grant({ kind: 'staff', ...person, scopes: null }, permission);
-  if (!granted) throw new Error(`${person.name} may not ${permission}.`);
-  return granted;
-}
-const HOUR = 3_600_000;
-
-/** Enters what a meter would have shown, computed from the scenario's faults with a little noise. */
-async function measure(
-  demo: DemoShop,
-  ticket: TicketFull,
-  scenario: DemoScenario,
-  repaired: boolean,
-  at: Date,
-) {
-  const board = demo.boards.find((b) => b.code === scenario.board);
-  if (!board) throw new Error(`No demo board ${scenario.board}.`);
-  const parts = board.parts.map((p) => ({ ...p, closed: p.closed ?? null }));
-  const network = drawnNetwork(board.positions, parts);
-  const shown = predictUnder(network, repaired ? [] : scenario.faults, scenario.probes);
-  const tech = as(demo.staff.tech, 'ticket.bench');
-  for (const [place, probe] of scenario.probes.entries()) {
-    const ohms = shown[place];
-    const noisy = typeof ohms === 'number' ? ohms * demo.chance.between(0.996, 1.004) : null;
-    const typed =
-      noisy === null ? 'OL' : formatTrade(Number(noisy.toPrecision(noisy < 10 ? 2 : 4)));
-    const reading = {
-      ...probe,
-      place,
-      typed,
-      part: null,
-      lifted: [],
-      clientKey: randomUUID(),
-      phase: repaired ? ('after-repair' as const) : ('as-found' as const),
-    };
-    const later = new Date(at.getTime() + place * 90_000);
-    must(await enterReading(demo.db, tech, ticket, reading, later), `reading of ${ticket.number}`);
-  }
-}
-
 /** One ticket from intake along its path. */
 async function writeTicket(
   demo: DemoShop,
@@ -125,10 +59,11 @@ async function writeTicket(
   const scenario = chance.pick(demo.scenarios);
   const board = demo.boards.find((b) => b.code === scenario.board);
   const model = chance.pick(board?.models ?? []);
+  const tech = chance.pick(staff.techs);
   const customer = demo.customers[index % demo.customers.length];
   if (!customer) throw new Error('No demo customer.');
   const accessories: Accessory[] = chance.next() < 0.6 ? ['leads', 'case'] : ['leads'];
-  const promised = new Date(received.getTime() + (5 + Math.floor(chance.next() * 9)) * 24 * HOUR);
+  const promised = new Date(received.getTime() + (5 + Math.floor(chance.next() * 9)) * DAY);
   const taken = await takeIn(
     db,
     as(staff.counter, 'ticket.intake'),
@@ -148,7 +83,7 @@ async function writeTicket(
       promisedOn: promised.toISOString().slice(0, 10),
     },
     shop,
-    received,
+    atWork(received.getTime(), now),
   );
   const { number } = must(taken, 'intake');
   const head = await ticketByNumber(db, number);
@@ -156,16 +91,13 @@ async function writeTicket(
   let version = 1;
   const pace = Math.min(20 * HOUR, (now.getTime() - received.getTime()) / (path.length + 1));
   for (const [i, step] of path.entries()) {
-    const at = new Date(received.getTime() + pace * (i + chance.between(0.5, 0.9)));
+    const at = atWork(received.getTime() + pace * (i + chance.between(0.5, 0.9)), now);
     if (i === 1) {
       for (const caution of CAUTION_CODES)
-        must(
-          await tickCaution(db, as(staff.tech, 'ticket.bench'), head, caution, true, at),
-          'caution',
-        );
-      await measure(demo, head, scenario, false, at);
+        must(await tickCaution(db, as(tech, 'ticket.bench'), head, caution, true, at), 'caution');
+      await measure(demo, tech, head, scenario, false, at);
     }
-    if (step === 'begin-release-check') await measure(demo, head, scenario, true, at);
+    if (step === 'begin-release-check') await measure(demo, tech, head, scenario, true, at);
     const person =
       step === 'release'
         ? staff.senior
@@ -174,7 +106,7 @@ async function writeTicket(
             step === 'approve' ||
             step === 'decline'
           ? staff.counter
-          : staff.tech;
+          : tech;
     const input = {
       step,
       note: NOTES[step] ?? '',
@@ -189,19 +121,16 @@ async function writeTicket(
     const moved = await takeStep(db, as(person, 'ticket.step'), number, version, input, shop, at);
     ({ version } = must(moved, `${step} of ${number}`));
     if (step === 'start-repair')
-      await writeNote(db, as(staff.tech, 'ticket.message'), head.id, scenario.cause, at);
+      await writeNote(db, as(tech, 'ticket.message'), head.id, scenario.cause, at);
   }
   if (index % 6 === 2)
-    await talk(demo, head, index, new Date(received.getTime() + pace * path.length + HOUR / 2));
+    await talk(demo, head, index, atWork(received.getTime() + pace * path.length + HOUR / 2, now));
   // Half of those that wait at the bench have been measured already.
   if (path.length === 1 && index % 2 === 0) {
-    const at = new Date(received.getTime() + pace);
+    const at = atWork(received.getTime() + pace, now);
     for (const caution of CAUTION_CODES)
-      must(
-        await tickCaution(db, as(staff.tech, 'ticket.bench'), head, caution, true, at),
-        'caution',
-      );
-    await measure(demo, head, scenario, false, at);
+      must(await tickCaution(db, as(tech, 'ticket.bench'), head, caution, true, at), 'caution');
+    await measure(demo, tech, head, scenario, false, at);
   }
   return number;
 }
@@ -240,7 +169,7 @@ export async function writeTickets(demo: DemoShop, now: Date): Promise<string[]>
       const days = closed
         ? demo.chance.between(20, 120)
         : path.length * 1.3 + demo.chance.between(0.2, 4);
-      return { path, received: new Date(now.getTime() - days * 24 * HOUR) };
+      return { path, received: new Date(now.getTime() - days * DAY) };
     })
     .sort((a, b) => a.received.getTime() - b.received.getTime());
   const numbers: string[] = [];
