@@ -3,7 +3,13 @@ import { and, eq, sql } from 'drizzle-orm';
 import type { BeginPhoto, EditPhoto, PhotoView, Upload } from '@/contracts/photos';
 import { inTransaction } from '@/db/client';
 import { photos } from '@/db/schema/photos';
-import { kindByName, refuseKind, refuseSize, typeOfKind } from '@/domain/photos/files';
+import {
+  kindByName,
+  PHOTO_MAX_BYTES,
+  refuseKind,
+  refuseSize,
+  typeOfKind,
+} from '@/domain/photos/files';
 import type { Granted } from '../auth/actor';
 import { newPublicId } from '../auth/secrets';
 import { promise } from '../outbox/commands';
@@ -32,7 +38,10 @@ export async function beginPhoto(
   const ticket = await ticketOfPhotos(shop.db, number);
   if (!ticket) return absent('ticket');
   const size = refuseSize(input.bytes);
-  if (size) return refuse('too-large', size, { errors: [{ path: 'bytes', message: size }] });
+  if (size) {
+    const refused = input.bytes > PHOTO_MAX_BYTES ? 'too-large' : 'invalid';
+    return refuse(refused, size, { errors: [{ path: 'bytes', message: size }] });
+  }
   const kind = kindByName(input.fileName, input.type);
   const type = typeOfKind(kind);
   if (!type) return refuseField('type', refuseKind(kind) ?? '');

@@ -85,7 +85,8 @@ async function finish(shop: PhotoShop, id: number, now: Date): Promise<Outcome<n
   const head = await fromStore(store.head(uploadKey));
   if (!head) return NOT_ARRIVED;
   const size = refuseSize(head.bytes);
-  if (size) return refuseUpload(shop, row, uploadKey, size, 'too-large');
+  const kind = head.bytes > PHOTO_MAX_BYTES ? 'too-large' : 'invalid';
+  if (size) return refuseUpload(shop, row, uploadKey, size, kind);
   const got = await fromStore(store.get(uploadKey, PHOTO_MAX_BYTES));
   if (!got) return NOT_ARRIVED;
   const file = Buffer.from(got.buffer, got.byteOffset, got.byteLength);

@@ -34,6 +34,25 @@ async function encode(
   return { name, type, bytes: data, width: info.width, height: info.height };
 }
 
+/** What libjpeg says of a picture that lacks a part; its other remarks (odd profiles, stray bytes) do no harm. */
+const LACKS_A_PART = /premature end|bad huffman/i;
+
+async function decode(file: Buffer, failOn: 'warning' | 'error' = 'warning') {
+  try {
+    return await sharp(file, { failOn, limitInputPixels: PHOTO_MAX_PIXELS })
+      .autoOrient()
+      .resize(fitting('full'))
+      .flatten({ background: '#ffffff' })
+      .toColourspace('srgb')
+      .raw()
+      .timeout({ seconds: 60 })
+      .toBuffer({ resolveWithObject: true });
+  } catch (error) {
+    if (failOn === 'error' || LACKS_A_PART.test(String(error))) throw error;
+    return decode(file, 'error');
+  }
+}
+
 /**
  * The variants of a photo, largest first: `full` within 4000 × 4000 pixels, `page` within 1600 and `thumb` within 400
  * as WebP, `thumb` as AVIF too.
@@ -41,13 +60,7 @@ async function encode(
  * @throws when the picture cannot be decoded whole.
  */
 export async function reencode(file: Buffer): Promise<Encoded[]> {
-  const { data, info } = await sharp(file, { failOn: 'error', limitInputPixels: PHOTO_MAX_PIXELS })
-    .autoOrient()
-    .resize(fitting('full'))
-    .flatten({ background: '#ffffff' })
-    .toColourspace('srgb')
-    .raw()
-    .toBuffer({ resolveWithObject: true });
+  const { data, info } = await decode(file);
   const pixels = sharp(data, { raw: info });
   const thumb = await pixels
     .clone()
