@@ -91,7 +91,9 @@ const leaves = [
 
 /** A block that may hold lists down to `depth`; below that there is no list to be had. */
 function blockOf(depth: number): z.ZodType<Block, Block> {
-  if (depth === 0) return z.discriminatedUnion('type', leaves) as z.ZodType<Block, Block>;
+  const named = { id: `FaultBlock${depth}` };
+  if (depth === 0)
+    return z.discriminatedUnion('type', leaves).meta(named) as z.ZodType<Block, Block>;
   const item = z.strictObject({
     type: z.literal('listItem'),
     content: z
@@ -100,11 +102,12 @@ function blockOf(depth: number): z.ZodType<Block, Block> {
       .max(BODY_LIMITS.nodes),
   });
   const content = z.array(item).min(1, 'A list without entries.').max(BODY_LIMITS.nodes);
-  return z.discriminatedUnion('type', [
+  const block = z.discriminatedUnion('type', [
     ...leaves,
     z.strictObject({ type: z.literal('bulletList'), content }),
     z.strictObject({ type: z.literal('orderedList'), content }),
-  ]) as z.ZodType<Block, Block>;
+  ]);
+  return block.meta(named) as z.ZodType<Block, Block>;
 }
 
 const Blocks = z.array(blockOf(BODY_LIMITS.listDepth)).max(BODY_LIMITS.nodes);

@@ -7,15 +7,25 @@ import { ROUTES } from './routes';
 
 type Json = Record<string, unknown>;
 
-const schemaOf = (schema: z.ZodType, io: 'input' | 'output'): Json => {
-  const { $schema: _draft, ...rest } = z.toJSONSchema(schema, {
-    io,
-    unrepresentable: 'any',
-  }) as Json;
-  return rest;
-};
+/** Schemas with an id of their own are described once, under components. */
+type Shared = Map<string, Json>;
+const DEFS = /"#\/\$defs\//g;
 
-function parametersOf(route: Route): Json[] {
+function describer(shared: Shared) {
+  return (schema: z.ZodType, io: 'input' | 'output'): Json => {
+    const json = JSON.stringify(z.toJSONSchema(schema, { io, unrepresentable: 'any' }));
+    const found = JSON.parse(json.replace(DEFS, '"#/components/schemas/')) as Json;
+    const { $schema: _draft, $defs, ...rest } = found;
+    for (const [name, def] of Object.entries(($defs ?? {}) as Record<string, Json>)) {
+      const { id: _id, ...plain } = def;
+      shared.set(name, plain);
+    }
+    return rest;
+  };
+}
+type Describe = ReturnType<typeof describer>;
+
+function parametersOf(route: Route, schemaOf: Describe): Json[] {
   const part = (schema: z.ZodType | undefined, place: 'path' | 'query'): Json[] => {
     if (!schema) return [];
     const json = schemaOf(schema, 'input') as {
@@ -56,13 +66,13 @@ const problem = (description: string): Json => ({
   content: { 'application/problem+json': { schema: { $ref: '#/components/schemas/Problem' } } },
 });
 
-function operationOf(route: Route): Json {
+function operationOf(route: Route, schemaOf: Describe): Json {
   const media = route.media ?? 'application/json';
   return {
     summary: route.summary,
     description: whoOf(route),
     operationId: `${route.method.toLowerCase()}${route.path.replace(/[^a-z]+(.)?/gi, (_, c: string | undefined) => (c ?? '').toUpperCase())}`,
-    parameters: parametersOf(route),
+    parameters: parametersOf(route, schemaOf),
     ...(route.who === 'public' ? { security: [] } : {}),
     ...(route.body
       ? {
@@ -86,9 +96,15 @@ function operationOf(route: Route): Json {
 
 /** The OpenAPI 3.1 document. */
 export function describeApi(origin: string): Json {
+  const shared: Shared = new Map();
+  const schemaOf = describer(shared);
+  const problemSchema = schemaOf(Problem, 'output');
   const paths: Record<string, Json> = {};
   for (const route of ROUTES) {
-    paths[route.path] = { ...paths[route.path], [route.method.toLowerCase()]: operationOf(route) };
+    paths[route.path] = {
+      ...paths[route.path],
+      [route.method.toLowerCase()]: operationOf(route, schemaOf),
+    };
   }
   return {
     openapi: '3.1.0',
@@ -102,7 +118,7 @@ export function describeApi(origin: string): Json {
     security: [{ session: [] }, { token: [] }],
     paths,
     components: {
-      schemas: { Problem: schemaOf(Problem, 'output') },
+      schemas: { Problem: problemSchema, ...Object.fromEntries(shared) },
       securitySchemes: {
         session: { type: 'apiKey', in: 'cookie', name: 'mw_session' },
         token: { type: 'http', scheme: 'bearer' },
