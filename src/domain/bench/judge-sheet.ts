@@ -1,30 +1,16 @@
 /** What a bench sheet says: the network's diagnosis, what was expected of each reading, parts judged alone. */
-import type { DiagnosisAnswer } from '../diagnosis/types';
+import type { DiagnosisAnswer, Reading } from '../diagnosis/types';
 import { diagnose } from '../diagnosis/diagnose';
 import { predict } from '../diagnosis/predict';
-import type { Network, Ohms } from '../network/types';
+import type { Ohms } from '../network/types';
 import { violations } from '../network/validate';
 import type { Incident, Mode, PartKind } from '../parts/kinds';
 import { checkPart } from '../parts/check';
+import { drawnNetwork, placePoints } from './points';
+import type { SheetPart, SheetReading } from './types';
 
-export type SheetPart = {
-  ref: string;
-  kind: PartKind;
-  nets: [string, string] | null;
-  ohms: number | null;
-  tolerance: number | null;
-  closed: string[] | null;
-};
-export type SheetReading = {
-  id: number;
-  from: string | null;
-  to: string | null;
-  part: string | null;
-  position: string | null;
-  lifted: string[];
-  value: Ohms;
-  resolution: number | null;
-};
+export { drawnNetwork };
+
 export type AloneVerdict = {
   reading: number;
   ref: string;
@@ -48,27 +34,6 @@ const noJudgement = (): SheetJudgement => ({
   alone: [],
   unused: [],
 });
-
-/** The parts drawn into the network, as the computation takes them. */
-export function drawnNetwork(positions: string[], parts: readonly SheetPart[]): Network {
-  return {
-    positions,
-    parts: parts.flatMap((p) =>
-      p.nets
-        ? [
-            {
-              ref: p.ref,
-              kind: p.kind,
-              nets: p.nets,
-              ohms: p.ohms ?? undefined,
-              tolerance: p.tolerance ?? undefined,
-              closed: p.closed ?? undefined,
-            },
-          ]
-        : [],
-    ),
-  };
-}
 
 function judgeAlone(reading: SheetReading, part: SheetPart): AloneVerdict | string {
   const answer = checkPart({
@@ -107,46 +72,23 @@ export function judgeSheet(
   const found = noJudgement();
   const network = drawnNetwork(positions, parts);
   const broken = network.parts.length > 0 ? violations(network) : [];
-  const nets = new Set(network.parts.flatMap((p) => p.nets));
-  const usable: { id: number; reading: Parameters<typeof predict>[1][number] }[] = [];
-  const unused = (reading: SheetReading, reason: string) =>
-    found.unused.push({ reading: reading.id, reason });
+  const usable: { id: number; reading: Reading }[] = [];
 
   for (const reading of sheet) {
-    const part = reading.part === null ? undefined : parts.find((p) => p.ref === reading.part);
-    if (reading.part !== null && !part) {
-      unused(
-        reading,
-        `${reading.part} is not in the board file: add it there, or name two points.`,
-      );
-      continue;
-    }
-    if (part && !part.nets) {
-      const verdict = judgeAlone(reading, part);
-      if (typeof verdict === 'string') unused(reading, verdict);
+    const unused = (reason: string) => found.unused.push({ reading: reading.id, reason });
+    const placed = placePoints({ positions, parts }, reading);
+    if (placed.kind === 'unusable') unused(placed.reason);
+    else if (placed.kind === 'alone') {
+      const verdict = judgeAlone(reading, placed.part);
+      if (typeof verdict === 'string') unused(verdict);
       else found.alone.push(verdict);
-      continue;
-    }
-    const from = part?.nets?.[0] ?? reading.from;
-    const to = part?.nets?.[1] ?? reading.to;
-    if (from === null || to === null) unused(reading, 'Two points or a part are needed.');
-    else if (!nets.has(from) || !nets.has(to))
-      unused(reading, `${nets.has(from) ? to : from} is no net of the board’s network.`);
-    else if (from === to) unused(reading, 'Both points are the same net.');
-    else if (reading.position !== null && !positions.includes(reading.position))
-      unused(reading, `${reading.position} is no switch position of this board.`);
-    else
+    } else {
+      const { value, resolution } = reading;
       usable.push({
         id: reading.id,
-        reading: {
-          from,
-          to,
-          position: reading.position ?? undefined,
-          value: reading.value,
-          resolution: reading.resolution || undefined,
-          lifted: reading.lifted.filter((ref) => network.parts.some((p) => p.ref === ref)),
-        },
+        reading: { ...placed.probe, value, resolution: resolution || undefined },
       });
+    }
   }
   if (usable.length === 0) return found;
   if (broken.length > 0) {

@@ -1,0 +1,170 @@
+/** What the readings say, one sentence a part, the measured value beside the predicted one. */
+import { predictUnder } from '../diagnosis/predict';
+import type { DiagnosisAnswer, Fault, PartStanding } from '../diagnosis/types';
+import type { Network } from '../network/types';
+import { violations } from '../network/validate';
+import { failureShare, modesOf } from '../parts/failure-shares';
+import type { Mode } from '../parts/kinds';
+import { modeLabels } from '../parts/words';
+import { formatOhms } from '../quantities/format';
+import { writeExpected } from './expected';
+import type { SheetJudgement } from './judge-sheet';
+import { drawnNetwork, placePoints } from './points';
+import { apart, fitFaults, typicalFault, type Taken } from './suspect-fit';
+import type { Points, SheetBoard, SheetReading } from './types';
+
+/** A sentence and the reading it quotes. */
+export type Said = { words: string; reading: number | null };
+
+type Quoted = { reading: SheetReading; taken: Taken };
+/** A quoted reading must be closer to the fault than to its absence by this many factors of e. */
+const TELLING = 0.15;
+/** From here the other modes of a suspect are not worth a word. */
+const PLAIN = 0.8;
+
+/** A value as the meter showed it. */
+export function writeMeasured({ value, resolution }: SheetReading): string {
+  return value === 'OL' ? 'OL' : formatOhms(value, resolution || undefined);
+}
+
+/** `V to COM`, or `RT1` when the leads stood straight on the part. */
+export function writePoints({ from, to, part, lifted }: Points): string {
+  const where = part ?? `${from} to ${to}`;
+  return lifted.length === 0 ? where : `${where} (${lifted.join(', ')} lifted)`;
+}
+
+/** The likeliest mode first, a second one when the first does not stand out: `open`, `leaky or short`. */
+export function modeWords({ modes, fault }: Pick<PartStanding, 'modes' | 'fault'>): {
+  mode: Mode | null;
+  words: string;
+} {
+  const order = (Object.entries(modes) as [Mode, number][]).sort((a, b) => b[1] - a[1]);
+  const [first, second] = order;
+  if (!first) return { mode: null, words: '' };
+  const both = second !== undefined && first[1] < PLAIN * fault;
+  const named = both ? [first, second] : [first];
+  return { mode: first[0], words: named.map(([mode]) => modeLabels[mode]).join(' or ') };
+}
+
+function usedReadings(board: SheetBoard, sheet: readonly SheetReading[]): Quoted[] {
+  return sheet.flatMap((reading) => {
+    const placed = placePoints(board, reading);
+    return placed.kind === 'network'
+      ? [{ reading, taken: { ...placed.probe, value: reading.value } }]
+      : [];
+  });
+}
+
+/** Of readings that tell as much, the one straight across the part is quoted. */
+const ACROSS = 0.5;
+
+/** The reading that the first prediction fits better than the second one by the most. */
+function mostTelling(
+  readings: readonly Quoted[],
+  nets: readonly string[],
+  fits: ReturnType<typeof predictUnder>,
+  misses: ReturnType<typeof predictUnder>,
+) {
+  let best: { at: number; gain: number } | null = null;
+  readings.forEach(({ taken }, at) => {
+    const [near, far] = [fits[at], misses[at]];
+    if (near === undefined || far === undefined) return;
+    const told = apart(taken.value, far) - apart(taken.value, near);
+    const across = nets.includes(taken.from) && nets.includes(taken.to);
+    const gain = told + (across ? ACROSS : 0);
+    if (told > TELLING && (!best || gain > best.gain)) best = { at, gain };
+  });
+  return best as { at: number; gain: number } | null;
+}
+
+const netsOf = (network: Network, ref: string): readonly string[] =>
+  network.parts.find((part) => part.ref === ref)?.nets ?? [];
+
+/** The likeliest hypothesis that has this fault, the fault itself first. */
+function withCompanions({ hypotheses }: DiagnosisAnswer, fault: Fault): Fault[] {
+  const same = (one: Fault) => one.ref === fault.ref && one.mode === fault.mode;
+  const found = hypotheses.find(({ faults }) => faults.some(same));
+  return [fault, ...(found?.faults ?? []).filter((one) => !same(one))].slice(0, 2);
+}
+
+function suspectSaid(
+  network: Network,
+  readings: readonly Quoted[],
+  judged: SheetJudgement,
+  diagnosis: DiagnosisAnswer,
+  standing: PartStanding,
+): Said {
+  const { ref } = standing;
+  const { mode } = modeWords(standing);
+  if (mode === null) return { words: 'No reading tells of it yet.', reading: null };
+  const taken = readings.map((r) => r.taken);
+  const [own, ...others] = fitFaults(network, withCompanions(diagnosis, { ref, mode }), taken);
+  const fits = predictUnder(network, own ? [own, ...others] : others, taken);
+  const found = mostTelling(
+    readings,
+    netsOf(network, ref),
+    fits,
+    predictUnder(network, others, taken),
+  );
+  const quoted = found ? readings[found.at] : undefined;
+  if (!quoted)
+    return {
+      words: 'No reading speaks against it; its kind and the incident speak for it.',
+      reading: null,
+    };
+  const { reading } = quoted;
+  const healthy = judged.expected.find((e) => e.reading === reading.id);
+  const should = healthy ? `; healthy it would be ${writeExpected(healthy.ohms)}` : '';
+  const about =
+    own && own.ohms !== 'OL' && mode !== 'short'
+      ? ` About ${formatOhms(Number(own.ohms.toPrecision(1)))} across it explains that.`
+      : '';
+  return {
+    words: `${writePoints(reading)} reads ${writeMeasured(reading)}${should}.${about}`,
+    reading: reading.id,
+  };
+}
+
+function clearedSaid(network: Network, readings: readonly Quoted[], ref: string): Said {
+  const part = network.parts.find((p) => p.ref === ref);
+  const taken = readings.map((r) => r.taken);
+  const healthy = predictUnder(network, [], taken);
+  const modes = part
+    ? modesOf(part.kind).sort((a, b) => failureShare(part.kind, b) - failureShare(part.kind, a))
+    : [];
+  for (const mode of modes) {
+    const under = predictUnder(network, [typicalFault(network, ref, mode)], taken);
+    const found = mostTelling(readings, part?.nets ?? [], healthy, under);
+    const quoted = found ? readings[found.at]?.reading : undefined;
+    if (found && quoted)
+      return {
+        words:
+          `${writePoints(quoted)} reads ${writeMeasured(quoted)}; ` +
+          `with ${ref} ${modeLabels[mode]} it would be ${writeExpected(under[found.at] ?? 'OL')}.`,
+        reading: quoted.id,
+      };
+  }
+  return { words: 'The readings together speak for it.', reading: null };
+}
+
+/**
+ * Answers the sentence of each part of a judged sheet: for a suspect the reading that tells most for it, for a
+ * cleared part the reading that a fault would have changed most.
+ */
+export function sentencesOn(
+  board: SheetBoard,
+  sheet: readonly SheetReading[],
+  judged: SheetJudgement,
+): (standing: PartStanding) => Said {
+  const network = drawnNetwork(board.positions, board.parts);
+  const readings = usedReadings(board, sheet);
+  const { diagnosis } = judged;
+  const able = diagnosis !== null && violations(network).length === 0;
+  return (standing) => {
+    if (!able || standing.standing === 'untouched')
+      return { words: 'No reading tells of it yet.', reading: null };
+    return standing.standing === 'suspect'
+      ? suspectSaid(network, readings, judged, diagnosis, standing)
+      : clearedSaid(network, readings, standing.ref);
+  };
+}
