@@ -3,6 +3,7 @@ import { marginalsOf } from './marginals';
 import { observe } from './meter';
 import { doubtsOf } from './doubts';
 import { byProbability, leadersOf } from './leaders';
+import { nextReadings } from './next';
 import type { Posterior } from './posterior';
 import { posteriorOf } from './posterior';
 import { reasonsOf } from './reasons';
@@ -40,7 +41,7 @@ export function diagnose(input: DiagnosisInput): DiagnosisAnswer {
     hypotheses: ranked(posterior, order, input.limit ?? DEFAULT_LIMIT),
     parts,
     groups,
-    next: [],
+    next: input.next === false ? [] : nextReadings(posterior, order, input.readings, parts),
     doubtful: doubtsOf(input.network, input.readings, workshop, leaders),
     reasons: reasonsOf(input, workshop, leaders, parts, groups),
   };

@@ -12,22 +12,27 @@ const SIZE = Math.ceil((Math.log(1e15) - LOW) / STEP) + 1;
  */
 export function toleranceBounds(scene: Scene): Float64Array {
   const table = new Float64Array(scene.aims.length * SIZE);
-  scene.aims.forEach((aim, index) => {
-    for (let at = 0; at < SIZE; at++) {
-      const ohms = Math.exp(LOW + at * STEP);
-      let squares = 0;
-      let largest = 0;
-      for (let k = 0; k < scene.parts; k++) {
-        if (aim.touches[k] === 0) continue;
-        const ratio = ohms / scene.nominal[k]!;
-        const share = Math.min(1, ratio, 1 / ratio);
-        const variance = scene.spread[k]! ** 2;
-        squares += share * share * variance;
-        largest = Math.max(largest, share * variance);
-      }
-      table[index * SIZE + at] = Math.min(squares, largest);
+  scene.aims.forEach((aim, index) => table.set(toleranceBound(scene, aim.touches), index * SIZE));
+  return table;
+}
+
+/** The bound for a reading that touches these parts (all when left out). */
+export function toleranceBound(scene: Scene, touches?: Uint8Array): Float64Array {
+  const table = new Float64Array(SIZE);
+  for (let at = 0; at < SIZE; at++) {
+    const ohms = Math.exp(LOW + at * STEP);
+    let squares = 0;
+    let largest = 0;
+    for (let k = 0; k < scene.parts; k++) {
+      if (touches !== undefined && touches[k] === 0) continue;
+      const ratio = ohms / scene.nominal[k]!;
+      const share = Math.min(1, ratio, 1 / ratio);
+      const variance = scene.spread[k]! ** 2;
+      squares += share * share * variance;
+      largest = Math.max(largest, share * variance);
     }
-  });
+    table[at] = Math.min(squares, largest);
+  }
   return table;
 }
 

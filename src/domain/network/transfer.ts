@@ -14,6 +14,8 @@ export interface EdgeTransfers {
   readonly away: Float64Array;
   /** Transfer resistance between edges, Ω: voltage across one per ampere driven across the other. */
   readonly between: Float64Array;
+  /** Voltage of every net per ampere driven across each edge, Ω; edge by edge, rows of nets. */
+  readonly volts: Float64Array;
 }
 
 /** Resistance of a pair of nets and its transfer resistance to every edge, Ω. */
@@ -38,6 +40,7 @@ export function edgeTransfers(circuit: Circuit): EdgeTransfers {
   const ohms = new Float64Array(count);
   const away = new Float64Array(count).fill(1);
   const between = new Float64Array(count * count);
+  const volts = new Float64Array(count * circuit.nets);
   for (let k = 0; k < count; k++) {
     const edge = circuit.edges[k]!;
     if (edge.siemens === 0) continue;
@@ -45,17 +48,38 @@ export function edgeTransfers(circuit: Circuit): EdgeTransfers {
     ohms[k] = driven.ohms;
     away[k] = driven.away;
     between.set(acrossEdges(circuit, driven), k * count);
+    volts.set(driven.volts, k * circuit.nets);
   }
   for (let j = 1; j < count; j++)
     for (let k = 0; k < j; k++) {
       const better = ohms[j]! < ohms[k]! ? between[j * count + k]! : between[k * count + j]!;
       between[j * count + k] = between[k * count + j] = better;
     }
-  return { prepared, ohms, away, between };
+  return { prepared, ohms, away, between, volts };
 }
 
 /** Drives a pair of nets once. */
 export function pairTransfer(prepared: Prepared, a: number, b: number): PairTransfer {
   const driven = drive(prepared, a, b);
   return { ohms: driven.ohms, toEdge: acrossEdges(prepared.circuit, driven) };
+}
+
+/**
+ * Resistance between all nets, Ω, row by row; Infinity across components. From one drive per net towards one
+ * of its component, so rounding is relative to the highest resistance there: for choosing, not for showing.
+ */
+export function allResistances(prepared: Prepared): Float64Array {
+  const n = prepared.circuit.nets;
+  const driven = Array.from(
+    { length: n },
+    (_, net) => drive(prepared, net, prepared.component[net]!).volts,
+  );
+  const ohms = new Float64Array(n * n);
+  for (let a = 0; a < n; a++)
+    for (let b = 0; b < a; b++) {
+      const same = prepared.component[a] === prepared.component[b];
+      const sum = driven[a]![a]! + driven[b]![b]! - 2 * driven[a]![b]!;
+      ohms[a * n + b] = ohms[b * n + a] = same ? Math.max(sum, 0) : Infinity;
+    }
+  return ohms;
 }
