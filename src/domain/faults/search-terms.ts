@@ -63,8 +63,8 @@ function singular(word: string): string {
 
 /** The words of a text in order. A dashed one (`LB-40`) is found joined and by its pieces. */
 export function scanWords(text: string): Found[] {
-  // Ohm sign and omega are the same letter here; both are one unit long, so places stay right.
-  const same = text.replaceAll('\u2126', 'Ω');
+  // One ohm sign, one kind of space; each is one unit long, so places stay right.
+  const same = text.replaceAll('\u2126', 'Ω').replace(/[\u00a0\u2009\u202f]/g, ' ');
   const found: Found[] = [];
   for (const match of same.matchAll(WORD)) {
     const word = match[0];

@@ -32,7 +32,11 @@ export function NoteReading(reading: ReadingWords) {
       <span className="note-reading-switch">{position}</span>
       <strong className="note-reading-value">{typed}</strong>
       <span className="note-reading-expected">
-        {expected === null ? '' : `expected ${expected}`}
+        {expected !== null && (
+          <>
+            <span>expected</span> {expected.replace(/ (?=\S+$)/, '\u00a0')}
+          </>
+        )}
       </span>
       {measured !== null && predicted !== null && (
         <span className="note-reading-scale">
