@@ -86,7 +86,12 @@ function operationOf(route: Route, schemaOf: Describe): Json {
       [route.status]: {
         description: 'As asked.',
         ...(route.answer
-          ? { content: { [media]: { schema: schemaOf(route.answer, 'input') } } }
+          ? {
+              content: {
+                [media]: { schema: schemaOf(route.answer, 'input') },
+                ...(route.csv ? { 'text/csv': { schema: { type: 'string' } } } : {}),
+              },
+            }
           : {}),
       },
       default: problem('Refused, and why.'),

@@ -5,6 +5,7 @@ export const REFUSALS = {
   'signed-out': { status: 401, title: 'Sign-in is needed' },
   'not-allowed': { status: 403, title: 'Not allowed' },
   absent: { status: 404, title: 'Not there' },
+  'wrong-method': { status: 405, title: 'The address does not take that method' },
   'not-acceptable': { status: 406, title: 'That form of answer is not offered' },
   conflict: { status: 409, title: 'Not possible as things stand' },
   stale: { status: 412, title: 'Somebody changed it meanwhile' },
@@ -25,6 +26,8 @@ export type Refusal = {
   errors?: FieldError[];
   /** Seconds, with `too-many`. */
   retryAfter?: number;
+  /** Methods, with `wrong-method`. */
+  allow?: string;
   /** More members of the problem answer, such as both versions of a stale edit. */
   more?: Record<string, unknown>;
 };

@@ -4,6 +4,7 @@ import { REFUSALS, type FieldError, type Refusal } from '../refusal';
 export function problemResponse(refusal: Refusal): Response {
   const { status, title } = REFUSALS[refusal.kind];
   const headers = new Headers({ 'content-type': 'application/problem+json' });
+  if (refusal.allow) headers.set('allow', refusal.allow);
   if (refusal.retryAfter) headers.set('retry-after', String(refusal.retryAfter));
   if (status === 401) headers.set('www-authenticate', 'Bearer realm="Meterwright"');
   const body = {

@@ -5,6 +5,7 @@ import {
   count,
   desc,
   eq,
+  inArray,
   isNotNull,
   isNull,
   like,
@@ -107,4 +108,17 @@ export async function readPerson(db: Queryable, id: number): Promise<Person | nu
     .from(users)
     .where(and(eq(users.id, id), staff));
   return row ? personOf(row) : null;
+}
+
+/** The names of some members of staff, by key. */
+export async function namesOfPeople(
+  db: Queryable,
+  ids: readonly number[],
+): Promise<Map<number, string>> {
+  if (ids.length === 0) return new Map();
+  const rows = await db
+    .select({ id: users.id, name: users.name })
+    .from(users)
+    .where(and(inArray(users.id, [...ids]), staff));
+  return new Map(rows.map(({ id, name }) => [id, name]));
 }
