@@ -3,9 +3,6 @@ import { roleMay } from '@/domain/people';
 import { plainText, showPage } from '../http/show-page';
 import { PAGES } from './page-access';
 
-/** Where a request ends that no page took, whatever its method. */
-const ENDS = ['/404', '/500'];
-
 /** Answers instead of the page when the person may not open it; null when they may. */
 export function gatePage(context: APIContext): Response | Promise<Response> | null {
   const rule = PAGES[context.routePattern];
