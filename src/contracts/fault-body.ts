@@ -5,6 +5,7 @@
 import * as z from 'zod/v4';
 import type { Block, FaultBody, Inline } from '@/domain/faults/body';
 import { SECTIONS } from '@/domain/faults/body';
+import { isSafeLink } from '@/domain/faults/links';
 
 export const BODY_LIMITS = {
   bytes: 200_000,
@@ -21,19 +22,6 @@ const plain = (max: number, min = 0) =>
     .min(min, 'Empty: text is needed.')
     .max(max, `Longer than ${max} characters: shorten it.`)
     .regex(PLAIN, 'Has a control character: plain text is needed.');
-
-/** True for web and mail addresses and for paths of this site. */
-export function isSafeLink(href: string): boolean {
-  if (/[\s\\\p{Cc}\p{Cf}]/u.test(href)) return false;
-  if (/^\/(?!\/)/.test(href)) return true;
-  if (!/^(https?:\/\/|mailto:)/i.test(href)) return false;
-  try {
-    const { protocol, username, password } = new URL(href);
-    return ['https:', 'http:', 'mailto:'].includes(protocol) && username === '' && password === '';
-  } catch {
-    return false;
-  }
-}
 
 const Href = z
   .string()
@@ -89,17 +77,19 @@ const leaves = [
   }),
 ] as const;
 
-/** A block that may hold lists down to `depth`; below that there is no list to be had. */
-function blockOf(depth: number): z.ZodType<Block, Block> {
-  const named = { id: `FaultBlock${depth}` };
-  if (depth === 0)
-    return z.discriminatedUnion('type', leaves).meta(named) as z.ZodType<Block, Block>;
+type BlockSchema = z.ZodType<Block, Block>;
+
+/** Block schemas by list depth: the last may hold lists to the full depth, the first none. */
+function blockSchemas(depth: number): BlockSchema[] {
+  if (depth === 0) return [z.discriminatedUnion('type', leaves) as BlockSchema];
+  const inner = blockSchemas(depth - 1);
   const item = z.strictObject({
     type: z.literal('listItem'),
     content: z
-      .array(blockOf(depth - 1))
+      .array(inner.at(-1) as BlockSchema)
       .min(1)
-      .max(BODY_LIMITS.nodes),
+      .max(BODY_LIMITS.nodes)
+      .refine(([first]) => first?.type === 'paragraph', 'A list entry begins with a paragraph.'),
   });
   const content = z.array(item).min(1, 'A list without entries.').max(BODY_LIMITS.nodes);
   const block = z.discriminatedUnion('type', [
@@ -107,10 +97,15 @@ function blockOf(depth: number): z.ZodType<Block, Block> {
     z.strictObject({ type: z.literal('bulletList'), content }),
     z.strictObject({ type: z.literal('orderedList'), content }),
   ]);
-  return block.meta(named) as z.ZodType<Block, Block>;
+  return [...inner, block as BlockSchema];
 }
 
-const Blocks = z.array(blockOf(BODY_LIMITS.listDepth)).max(BODY_LIMITS.nodes);
+const blocks = blockSchemas(BODY_LIMITS.listDepth);
+
+/** Schemas that the API's description names once: written out wherever they occur they would fill it. */
+export const NAMED_BLOCKS = blocks.map((schema, depth) => ({ id: `FaultBlock${depth}`, schema }));
+
+const Blocks = z.array(blocks.at(-1) as BlockSchema).max(BODY_LIMITS.nodes);
 
 function countNodes(nodes: readonly unknown[] | undefined): number {
   return (nodes ?? []).reduce<number>(

@@ -2,6 +2,7 @@
 import * as z from 'zod/v4';
 import { PERMISSIONS, type Permission } from '@/domain/people';
 import { Problem } from './common';
+import { NAMED_BLOCKS } from './fault-body';
 import type { Route } from './route';
 import { ROUTES } from './routes';
 
@@ -11,9 +12,13 @@ type Json = Record<string, unknown>;
 type Shared = Map<string, Json>;
 const DEFS = /"#\/\$defs\//g;
 
+// Not the library's global registry: a module that the development server loads again would name them twice.
+const metadata = z.registry<{ id: string }>();
+for (const { id, schema } of NAMED_BLOCKS) metadata.add(schema, { id });
+
 function describer(shared: Shared) {
   return (schema: z.ZodType, io: 'input' | 'output'): Json => {
-    const json = JSON.stringify(z.toJSONSchema(schema, { io, unrepresentable: 'any' }));
+    const json = JSON.stringify(z.toJSONSchema(schema, { io, unrepresentable: 'any', metadata }));
     const found = JSON.parse(json.replace(DEFS, '"#/components/schemas/')) as Json;
     const { $schema: _draft, $defs, ...rest } = found;
     for (const [name, def] of Object.entries(($defs ?? {}) as Record<string, Json>)) {
