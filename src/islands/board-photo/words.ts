@@ -1,0 +1,24 @@
+/** How sides and phases of photos are written. */
+import type { PhotoView } from '@/contracts/photos';
+import type { PhotoPhase, PhotoSide } from '@/domain/photos/files';
+
+export const SIDE_LABELS: Readonly<Record<PhotoSide, string>> = {
+  front: 'Front',
+  back: 'Back',
+  other: 'Other',
+};
+export const PHASE_LABELS: Readonly<Record<PhotoPhase, string>> = {
+  before: 'Before repair',
+  after: 'After repair',
+};
+
+/** "Front, before repair". */
+export const photoTitle = ({ side, phase }: Pick<PhotoView, 'side' | 'phase'>): string =>
+  `${SIDE_LABELS[side]}, ${PHASE_LABELS[phase].toLowerCase()}`;
+
+/** What a picture shows, for those who do not see it. */
+export const photoWords = (photo: PhotoView): string =>
+  [photoTitle(photo), photo.caption].filter(Boolean).join(': ');
+
+export const counted = (n: number, one: string, many = `${one}s`): string =>
+  `${n} ${n === 1 ? one : many}`;
