@@ -12,7 +12,7 @@ export function PhotoStrip({
   onChoose: (id: string) => void;
 }) {
   return (
-    <ul className="photo-strip">
+    <ul className="contact-sheet">
       {photos.map((photo) => (
         <li key={photo.id}>
           <a
@@ -32,7 +32,7 @@ export function PhotoStrip({
               loading="lazy"
               decoding="async"
             />
-            <span className="photo-strip-words">
+            <span className="contact-sheet-words">
               <span>{photoTitle(photo)}</span>
               {photo.pins.length > 0 && <span>{counted(photo.pins.length, 'pin')}</span>}
               {photo.shared && <span className="tag tag-copper">shared</span>}
