@@ -44,6 +44,8 @@ async function work({ children, folder }, json) {
       rows.push(...(await measure(children, folder, name, told)));
     });
   }
+  if (rows.length === 0)
+    throw new Stop('No file of tests/bench offers rows: nothing was measured.');
   mkdirSync(output, { recursive: true });
   const text = JSON.stringify({ node: process.version, rows }, null, 2);
   writeWhole(written, `${text}\n`);
