@@ -53,13 +53,18 @@ export const PartVerdict = z.object({
 });
 
 export const Suspects = z.object({
-  /** Null when the board has no network or no reading between its points. */
+  /**
+   * Null when the board has no network or no reading between its points. Its `doubtful` count the readings as
+   * `expected` lists them.
+   */
   diagnosis: DiagnosisAnswer.nullable(),
   /** What the healthy network would show, by reading id; half-width `band` as a fraction. */
   expected: z.array(z.object({ reading: z.int(), ohms: Ohms, band: z.number() })),
   alone: z.array(PartVerdict),
   /** Readings that could not be used, and why. */
   unused: z.array(z.object({ reading: z.int(), reason: z.string() })),
+  /** A sentence for every part that the readings accuse or clear, and the reading it quotes. */
+  said: z.array(z.object({ ref: z.string(), words: z.string(), reading: z.int().nullable() })),
 });
 export type Suspects = z.input<typeof Suspects>;
 

@@ -7,6 +7,7 @@ import { violations } from '../network/validate';
 import type { Incident, Mode, PartKind } from '../parts/kinds';
 import { checkPart } from '../parts/check';
 import { drawnNetwork, placePoints } from './points';
+import { sentencesOn } from './sentences';
 import type { SheetPart, SheetReading } from './types';
 
 export { drawnNetwork };
@@ -26,6 +27,8 @@ export type SheetJudgement = {
   expected: { reading: number; ohms: Ohms; band: number }[];
   alone: AloneVerdict[];
   unused: { reading: number; reason: string }[];
+  /** A sentence for every part that the readings accuse or clear, and the reading it quotes. */
+  said: { ref: string; words: string; reading: number | null }[];
 };
 
 const noJudgement = (): SheetJudgement => ({
@@ -33,6 +36,7 @@ const noJudgement = (): SheetJudgement => ({
   expected: [],
   alone: [],
   unused: [],
+  said: [],
 });
 
 function judgeAlone(reading: SheetReading, part: SheetPart): AloneVerdict | string {
@@ -107,5 +111,9 @@ export function judgeSheet(
     ohms: p.ohms,
     band: p.band,
   }));
+  const say = sentencesOn({ positions, parts }, sheet, found);
+  found.said = found.diagnosis.parts
+    .filter(({ standing }) => standing !== 'untouched')
+    .map((part) => ({ ref: part.ref, ...say(part) }));
   return found;
 }

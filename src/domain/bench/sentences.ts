@@ -90,7 +90,7 @@ function withCompanions({ hypotheses }: DiagnosisAnswer, fault: Fault): Fault[] 
 function suspectSaid(
   network: Network,
   readings: readonly Quoted[],
-  judged: SheetJudgement,
+  judged: Pick<SheetJudgement, 'expected'>,
   diagnosis: DiagnosisAnswer,
   standing: PartStanding,
 ): Said {
@@ -154,7 +154,7 @@ function clearedSaid(network: Network, readings: readonly Quoted[], ref: string)
 export function sentencesOn(
   board: SheetBoard,
   sheet: readonly SheetReading[],
-  judged: SheetJudgement,
+  judged: Pick<SheetJudgement, 'diagnosis' | 'expected'>,
 ): (standing: PartStanding) => Said {
   const network = drawnNetwork(board.positions, board.parts);
   const readings = usedReadings(board, sheet);

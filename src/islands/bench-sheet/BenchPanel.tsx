@@ -1,44 +1,97 @@
-/** The bench of a ticket: its readings, and beside them what they say of the parts. */
-import { formatOhms } from '@/domain/quantities/format';
-import type { BenchPanelProps } from './panel-props';
+/**
+ * The bench of a ticket: its readings as a sheet, and beside it what they say of the parts.
+ *
+ * The sheet by keyboard alone (grid "Bench sheet", cells "Row 1, From", "Row 1, Reading" and so on):
+ * - Focusing the grid puts the cursor on the first cell to fill in, usually "From" of the empty last row.
+ * - Typing replaces the cell, Enter or F2 opens it with its text, Backspace empties it, Escape leaves it as it was.
+ *   While typing, names of nets, parts and positions are offered: the marked one is taken on leaving the cell, the
+ *   arrows mark another.
+ * - Tab goes From → To → Switch → Reading and then leaves the sheet; Lifted is reached by the arrows. Enter goes to the
+ *   next empty cell of the row, and from the reading to the row below. The row is saved as soon as nothing is missing.
+ * - A part's reference in From with To left empty is a reading straight on the part.
+ * - Below the last row there is always an empty one that copies From and Switch. So four readings in full:
+ *   V Tab P Tab volts Tab OL Enter, then (From and Switch are copied, the cursor is on To)
+ *   COM Enter 1k2 Enter · Q Enter 0R8 Enter · A Enter 4.99M Enter.
+ * - Delete strikes the row, Ctrl+Z (or "Bring it back") undoes it.
+ * - M takes the proposed next reading, in Reading and in cells where no name begins with M; Alt+M everywhere; Enter on
+ *   its row, or its button, as well. The cursor then stands on the reading of the new row.
+ * - A reading with two meanings (1,600) stays open on Enter; Tab reaches the buttons that settle it.
+ */
+import { useEffect, useMemo, useState, useSyncExternalStore } from 'react';
+import type { BenchPanelProps, Phase } from './panel-props';
+import { usePointed } from './pointing';
+import { newClientKey } from './client-key';
+import { openSheet } from './sheet-store';
+import { SheetPanel } from './SheetPanel';
 import { SuspectsPanel } from './SuspectsPanel';
+import { useSuspects } from './use-suspects';
 
-export function BenchPanel({ parts, readings, suspects }: BenchPanelProps) {
-  const expected = new Map(suspects.asFound.expected.map((e) => [e.reading, e.ohms]));
-  const rows = readings.filter((r) => r.phase === 'as-found');
-  const written = (ohms: number | 'OL' | undefined) =>
-    ohms === undefined ? '' : ohms === 'OL' ? 'OL' : formatOhms(Number(ohms.toPrecision(3)));
+/** Rows that did not reach the server are tried again this often, ms. */
+const RETRY = 5_000;
+
+export function BenchPanel(props: BenchPanelProps) {
+  const { ticketNumber, canEdit, cautionsTicked, closed, readings, suspects } = props;
+  const { positions, nets, parts } = props;
+  const editable = canEdit && cautionsTicked && !closed;
+  const board = useMemo(() => ({ positions, nets, parts }), [positions, nets, parts]);
+  const [store] = useState(() =>
+    openSheet({
+      ticketNumber,
+      board,
+      readings,
+      editable,
+      ask: (address, request) => fetch(address, request),
+      newClientKey,
+    }),
+  );
+  const { sheets, saves } = useSyncExternalStore(store.subscribe, store.snapshot, store.snapshot);
+  const [phase, setPhase] = useState<Phase>('as-found');
+  const first = { 'as-found': suspects.asFound, 'after-repair': suspects.afterRepair };
+  const { told, failed, again } = useSuspects(ticketNumber, first, phase, saves[phase]);
+  const pointed = usePointed();
+
+  useEffect(() => {
+    const warn = (event: BeforeUnloadEvent) => store.unsaved() && event.preventDefault();
+    const retry = setInterval(store.retryAll, RETRY);
+    window.addEventListener('beforeunload', warn);
+    window.addEventListener('online', store.retryAll);
+    return () => {
+      clearInterval(retry);
+      window.removeEventListener('beforeunload', warn);
+      window.removeEventListener('online', store.retryAll);
+    };
+  }, [store]);
+
+  const locked =
+    canEdit && !closed && !cautionsTicked ? (
+      <p className="bar bar-caution bench-locked">
+        <span>
+          Readings wait for the cautions: <a href="#cautions">tick all of them first</a>.
+        </span>
+      </p>
+    ) : null;
   return (
     <div className="columns">
-      <section className="sheet" aria-label="Bench sheet">
-        <div className="sheet-head">
-          <h2>Bench sheet</h2>
-          <p className="remark">as found</p>
-        </div>
-        <table className="table-dense">
-          <thead>
-            <tr>
-              <th>From</th>
-              <th>To</th>
-              <th>Switch</th>
-              <th className="num">Reading</th>
-              <th className="num">Expected</th>
-            </tr>
-          </thead>
-          <tbody>
-            {rows.map((r) => (
-              <tr key={r.id}>
-                <td className="mono">{r.part ?? r.from}</td>
-                <td className="mono">{r.to}</td>
-                <td className="mono">{r.position}</td>
-                <td className="num">{r.typed}</td>
-                <td className="num">{written(expected.get(r.id))}</td>
-              </tr>
-            ))}
-          </tbody>
-        </table>
-      </section>
-      <SuspectsPanel suspects={suspects.asFound} parts={parts} />
+      <SheetPanel
+        sheets={sheets}
+        phase={phase}
+        onPhase={setPhase}
+        store={store}
+        board={board}
+        editable={editable}
+        locked={locked}
+        told={told}
+        pointed={pointed}
+      />
+      <SuspectsPanel
+        phase={phase}
+        told={told}
+        failed={failed}
+        onAgain={again}
+        board={board}
+        rows={sheets[phase]}
+        pointed={pointed}
+      />
     </div>
   );
 }

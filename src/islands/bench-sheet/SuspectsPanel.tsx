@@ -1,45 +1,157 @@
 import type { Suspects } from '@/contracts/bench';
-import { modeLabels } from '@/domain/parts/words';
-import { PartSymbol } from '../shared/PartSymbol';
+import { LOOK_ELSEWHERE, summaryOf } from '@/domain/bench/summary';
 import { ProbabilityScale } from '../shared/ProbabilityScale';
-import type { BoardPart } from './panel-props';
+import { AloneEntry } from './AloneEntry';
+import { FoldedParts } from './FoldedParts';
+import type { Board, Phase } from './panel-props';
+import { isStruck, type Row } from './rows';
+import { gathered } from './suspect-order';
+import { SuspectEntry } from './SuspectEntry';
 
-const likeliest = (modes: object) =>
-  (Object.entries(modes) as [keyof typeof modeLabels, number][]).sort(
-    (a, b) => b[1] - a[1],
-  )[0]?.[0];
+const WAITING: Readonly<Record<Phase, string>> = {
+  'as-found': 'Readings show here what may have failed. Begin between the jacks.',
+  'after-repair': 'Readings after the repair show here whether the network is sound again.',
+};
+const NO_BOARD =
+  'The board of this instrument is not known: readings are kept, but nothing can be ranked.';
 
-/** What the readings say of the parts: suspects first. */
-export function SuspectsPanel({ suspects, parts }: { suspects: Suspects; parts: BoardPart[] }) {
-  const { diagnosis } = suspects;
-  const ranked = [...(diagnosis?.parts ?? [])]
-    .filter((p) => p.standing === 'suspect')
-    .sort((a, b) => b.fault - a.fault);
+const count = (n: number, one: string, more: string) => `${n} ${n === 1 ? one : more}`;
+
+/** What the readings of a phase say of the parts: suspects first, then what is cleared and what nothing tells of. */
+export function SuspectsPanel({
+  phase,
+  told,
+  failed,
+  onAgain,
+  board,
+  rows,
+  pointed,
+}: {
+  phase: Phase;
+  told: Suspects | null;
+  /** The last change could not be asked about. */
+  failed: boolean;
+  onAgain: () => void;
+  board: Board;
+  rows: readonly Row[];
+  pointed: string | null;
+}) {
+  const live = rows.filter((row) => !isStruck(row));
+  const numberOf = (reading: number | undefined) =>
+    live.findIndex((row) => row.saved !== null && row.saved.id === reading) + 1;
+  const partOf = (ref: string) => board.parts.find((part) => part.ref === ref);
+  const diagnosis = told?.diagnosis ?? null;
+  const said = new Map(told?.said.map(({ ref, words }) => [ref, words]));
+  const alone = told?.alone ?? [];
+  const used = (told?.expected.length ?? 0) + alone.length;
+  const healthy = diagnosis?.healthy ?? 0;
+  const standing = (which: 'cleared' | 'untouched') =>
+    diagnosis?.parts.filter((part) => part.standing === which) ?? [];
   return (
-    <section className="sheet" aria-label="Suspects">
+    <section className="sheet suspects" aria-labelledby="suspects-title" id="suspects">
       <div className="sheet-head">
-        <h2>Suspects</h2>
+        <h2 id="suspects-title">Suspects</h2>
+        {failed ? (
+          <p className="remark" role="alert">
+            <span className="failed">Not up to date.</span>{' '}
+            <button type="button" className="button-text suspects-again" onClick={onAgain}>
+              Ask again
+            </button>
+          </p>
+        ) : (
+          used > 0 && <p className="remark">from {count(used, 'reading', 'readings')}</p>
+        )}
       </div>
-      {ranked.length === 0 && <p className="empty">Readings show here what may have failed.</p>}
-      <ul className="rows">
-        {ranked.map((suspect) => {
-          const part = parts.find((p) => p.ref === suspect.ref);
-          const mode = likeliest(suspect.modes);
-          if (!part || !mode) return null;
-          return (
-            <li key={suspect.ref}>
-              <PartSymbol kind={part.kind} state={mode} />
-              <strong className="mono">{suspect.ref}</strong> {part.value}{' '}
-              <strong className="failed">{modeLabels[mode]}</strong>
-              <ProbabilityScale
-                value={suspect.fault}
-                label={`${suspect.ref} ${modeLabels[mode]}`}
-                tone="danger"
+      <p className="sr-only" role="status">
+        {told ? summaryOf(told) : ''}
+      </p>
+      {used === 0 && (
+        <p className="empty">{board.parts.length === 0 ? NO_BOARD : WAITING[phase]}</p>
+      )}
+      {diagnosis && healthy >= LOOK_ELSEWHERE && (
+        <div className="suspect-healthy">
+          <p>
+            <strong className="passed">The network looks sound.</strong> The readings fit it
+            healthy: look elsewhere, or measure where no reading has been.
+          </p>
+          <ProbabilityScale value={healthy} label="Network healthy" tone="ok" />
+        </div>
+      )}
+      {diagnosis && (
+        <ol className="rows suspect-list">
+          {gathered(diagnosis).map((members) => (
+            <li key={members[0]?.ref} className={members.length > 1 ? 'suspect-group' : undefined}>
+              {members.length > 1 && (
+                <p className="suspect-alike">
+                  These readings cannot tell{' '}
+                  <span className="mono">{members.map(({ ref }) => ref).join(', ')}</span> apart:
+                  measure between them.
+                </p>
+              )}
+              {members.map((one) => {
+                const part = partOf(one.ref);
+                return (
+                  part && (
+                    <SuspectEntry
+                      key={one.ref}
+                      standing={one}
+                      part={part}
+                      words={said.get(one.ref) ?? ''}
+                      lit={one.ref === pointed}
+                    />
+                  )
+                );
+              })}
+            </li>
+          ))}
+        </ol>
+      )}
+      {alone.length > 0 && (
+        <ul className="rows suspect-list">
+          {alone.map((verdict) => (
+            <li key={verdict.reading}>
+              <AloneEntry
+                verdict={verdict}
+                value={partOf(verdict.ref)?.value ?? ''}
+                row={numberOf(verdict.reading)}
+                lit={verdict.ref === pointed}
               />
             </li>
-          );
-        })}
-      </ul>
+          ))}
+        </ul>
+      )}
+      {diagnosis && diagnosis.doubtful.length > 0 && (
+        <ul className="rows suspect-doubts">
+          {diagnosis.doubtful.map(({ reading, reason }) => (
+            <li key={reading}>
+              <strong className="doubtful">
+                Row {numberOf(told?.expected[reading]?.reading)}: measure this one again.
+              </strong>{' '}
+              <span className="remark">{reason}</span>
+            </li>
+          ))}
+        </ul>
+      )}
+      {diagnosis && (
+        <div className="suspect-folds">
+          {(['cleared', 'untouched'] as const).map((which) => (
+            <FoldedParts
+              key={which}
+              standing={which}
+              parts={standing(which)}
+              board={board.parts}
+              said={said}
+              pointed={pointed}
+            />
+          ))}
+          {healthy < LOOK_ELSEWHERE && (
+            <div className="suspect-foot">
+              <span className="remark">Nothing in this network failed</span>
+              <ProbabilityScale value={healthy} label="Network healthy" tone="plain" />
+            </div>
+          )}
+        </div>
+      )}
     </section>
   );
 }

@@ -21,15 +21,14 @@ export type BoardPart = {
   note: string;
 };
 
-export type BenchPanelProps = {
+/** What the sheet knows of the ticket's board; all empty when it has none. */
+export type Board = { positions: string[]; nets: BoardNet[]; parts: BoardPart[] };
+
+export type BenchPanelProps = Board & {
   ticketNumber: string;
   canEdit: boolean;
   cautionsTicked: boolean;
   closed: boolean;
-  /** Switch positions, nets and parts of the board; empty when the ticket has none. */
-  positions: string[];
-  nets: BoardNet[];
-  parts: BoardPart[];
   /** Both phases. */
   readings: BenchReading[];
   /** What the readings said as the page was made. */
