@@ -11,7 +11,12 @@ export async function startApp(children, folder, env, entry) {
   const words = entry
     ? [entry]
     : [`${root}/node_modules/astro/astro.js`, 'dev', '--host', env.HOST, '--port', env.PORT];
-  const app = children.start('app', process.execPath, words, { cwd: root, log, env });
+  const quiet = { ASTRO_TELEMETRY_DISABLED: '1', ASTRO_DISABLE_UPDATE_CHECK: 'true' };
+  const app = children.start('app', process.execPath, words, {
+    cwd: root,
+    log,
+    env: { ...env, ...quiet },
+  });
   await untilReady(app, `http://${reachable(env.HOST)}:${env.PORT}/api/health/ready`);
   return app;
 }
