@@ -223,6 +223,13 @@ export function decideStep(
   return { ok: true, to: target(step, facts) };
 }
 
+/** True when a step goes forward along the scale: the usual next thing to do. */
+export function leadsOn(from: Stage, to: Stage): boolean {
+  const line: readonly Stage[] = MAIN_STAGES;
+  const place = line.indexOf(to);
+  return place >= 0 && (line.includes(from) ? place > line.indexOf(from) : true);
+}
+
 export type OfferedStep = {
   step: Step;
   label: string;
