@@ -1,5 +1,6 @@
 // What the person at the terminal reads: one line a step, with the time it took.
 import { writeSync } from 'node:fs';
+import { dirname } from 'node:path';
 
 /**
  * Something the person has to put right. `sentence` says what to do; `detail` is shown below it
@@ -68,7 +69,9 @@ export function sayWhy(error) {
   } else if (error?.code === 'ENOSPC') {
     say('\nThe disk is full: free some space, then run the command again.');
   } else if (['EACCES', 'EPERM', 'EROFS'].includes(error?.code) && error.path) {
-    say(`\nThis user may not write to ${error.path}: give this user the folder, then start again.`);
+    say(
+      `\nThis user may not write in ${dirname(error.path)}: give this user the folder, then start again.`,
+    );
   } else {
     say(`\n${error?.stack ?? error}`);
   }
