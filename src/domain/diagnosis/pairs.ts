@@ -41,7 +41,6 @@ export function rankPairs(workshop: Workshop, singles: Singles, best: number): H
   const bounds = pairBounds(scene, evidence);
   const found: Hypothesis[] = [];
   const candidates: Candidate[] = [];
-  const healthy = singles.healthy.logLikelihood;
   for (let j = 1; j < scene.modes.length; j++) {
     const partJ = scene.modes[j]!.part;
     for (let k = 0; k < j; k++) {
@@ -49,7 +48,7 @@ export function rankPairs(workshop: Workshop, singles: Singles, best: number): H
       if (partJ === partK) continue;
       const prior = logOdds[j]! + logOdds[k]! + logShared[partJ * scene.parts + partK]!;
       if (apart(reach, j, k)) {
-        const log = prior + singles.joint[j]! + singles.joint[k]! - healthy;
+        const log = prior + singles.healthy + singles.gain[j]! + singles.gain[k]!;
         if (log > best - HOPELESS) found.push({ j, k, log });
         continue;
       }

@@ -15,7 +15,7 @@ export function posteriorOf(workshop: Workshop): Posterior {
   const { scene, priors } = workshop;
   const singles = weighSingles(workshop);
   const hypotheses: Hypothesis[] = [
-    { j: -1, k: -1, log: Math.log(priors.healthy) + singles.healthy.logLikelihood },
+    { j: -1, k: -1, log: Math.log(priors.healthy) + singles.healthy },
   ];
   scene.modes.forEach((_, j) =>
     hypotheses.push({ j, k: -1, log: Math.log(priors.odds[j]!) + singles.joint[j]! }),

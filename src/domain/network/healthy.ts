@@ -4,12 +4,12 @@ import type { NetworkPart } from './types';
 
 /**
  * What a healthy surge part, capacitor, gas tube or reverse junction is taken to read at a meter's test
- * voltage, Ω: the middle of a log-normal whose lowest hundredth lies at the 50 MΩ floor. Bench assumption.
+ * voltage, Ω: the middle of a log-normal that hardly ever reaches down to the 50 MΩ floor. Bench assumption.
  * A diode or zener below its knee insulates as well; which way round it was probed is not known here.
  */
-export const INSULATING_OHMS = 2e9;
-/** Standard deviation of ln R around {@link INSULATING_OHMS}. Bench assumption. */
-export const INSULATING_SPREAD = 1.5;
+export const INSULATING_OHMS = 5e9;
+/** Standard deviation of ln R around {@link INSULATING_OHMS}: 95 % lie in 0.4 to 64 GΩ. Bench assumption. */
+export const INSULATING_SPREAD = 1.3;
 /** The least resistance an edge may have, Ω: a zero-ohm link is taken as this. */
 export const LEAST_OHMS = 1e-3;
 /** What an open switch contact lets through, S (1 TΩ): used by the ranking only, never by a prediction. */
