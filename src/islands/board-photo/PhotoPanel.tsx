@@ -43,10 +43,9 @@ export function PhotoPanel({ ticketNumber, canEdit, parts, initial }: PhotoPanel
         </p>
       </div>
       {photo ? (
-        <>
-          <PhotoViewer photo={photo} canEdit={canEdit} live={live} parts={parts} edits={edits} />
+        <PhotoViewer photo={photo} canEdit={canEdit} live={live} parts={parts} edits={edits}>
           <PhotoStrip photos={photos} chosen={photo.id} onChoose={setWanted} />
-        </>
+        </PhotoViewer>
       ) : (
         <p className="empty">
           {canEdit

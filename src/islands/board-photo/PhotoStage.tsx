@@ -1,10 +1,7 @@
 /** The photo itself: zoomed and moved by hand, wheel or keys, with its pins and the crosshair. */
 import { useEffect, useRef, useState, type KeyboardEvent } from 'react';
 import type { PhotoView, PinView } from '@/contracts/photos';
-import type { PartKind } from '@/domain/parts/kinds';
-import { pointAt, pointing } from '../shared/pointing';
-import type { PartState } from '../shared/PartSymbol';
-import { PinMark, pinWords } from './PinMark';
+import { StagePins, type PinDrawing } from './StagePins';
 import { useGestures } from './use-gestures';
 import { isWhole, toPhoto, toStage, type Point, type Size, type View } from './view';
 import { photoWords } from './words';
@@ -27,10 +24,7 @@ export type StageProps = {
   /** Null where pins cannot be moved. */
   onMovePin: ((pin: PinView, to: Point) => void) | null;
   onPin: (pin: PinView) => void;
-  kindOf: (pin: PinView) => PartKind | null;
-  stateOf: (pin: PinView) => PartState;
-  litRef: string | null;
-  chosenPin: number | null;
+  drawing: PinDrawing;
   /** Told when the stage element is there, for giving it the keyboard. */
   stageRef: React.RefObject<HTMLDivElement | null>;
 };
@@ -103,40 +97,15 @@ export function PhotoStage(props: StageProps) {
         {close && sharp === photo.id && (
           <image {...frame} href={`/api/photos/${photo.id}/full`} preserveAspectRatio="none" />
         )}
-        {photo.pins.map((pin) => {
-          const kind = props.kindOf(pin);
-          const at = toStage(drag?.pin === pin.id ? drag.at : pin, view, photo);
-          return (
-            <g
-              key={pin.id}
-              data-pin={pin.id}
-              className="pin-hold"
-              tabIndex={0}
-              role="button"
-              aria-label={`Pin ${pinWords(pin, kind)}`}
-              aria-pressed={props.chosenPin === pin.id}
-              {...pointing(pin.label)}
-              onClick={() => !aim && props.onPin(pin)}
-              onKeyDown={(event) => {
-                if (event.key !== 'Enter' && event.key !== ' ') return;
-                event.preventDefault();
-                event.stopPropagation();
-                props.onPin(pin);
-              }}
-            >
-              <PinMark
-                pin={pin}
-                kind={kind}
-                state={props.stateOf(pin)}
-                at={at}
-                stage={stage}
-                lit={props.chosenPin === pin.id || props.litRef === pin.label}
-              />
-            </g>
-          );
-        })}
+        <StagePins
+          pins={photo.pins}
+          place={(pin) => toStage(drag?.pin === pin.id ? drag.at : pin, view, photo)}
+          stage={stage}
+          drawing={props.drawing}
+          onPin={(pin) => !aim && props.onPin(pin)}
+        />
         {cross && (
-          <g className="crosshair" aria-hidden="true" onPointerEnter={() => pointAt(null)}>
+          <g className="crosshair" aria-hidden="true">
             {['pin-halo', 'crosshair-line'].map((stroke) => (
               <path
                 key={stroke}

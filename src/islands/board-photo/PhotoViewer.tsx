@@ -1,5 +1,5 @@
 /** One photo in its stage, its tools above it, its facts and pins beside it. */
-import { useEffect, useRef, useState, type KeyboardEvent } from 'react';
+import { useEffect, useRef, useState, type KeyboardEvent, type ReactNode } from 'react';
 import type { PhotoView, PinView } from '@/contracts/photos';
 import { newKey } from '../shared/ask';
 import { usePointed } from '../shared/pointing';
@@ -36,12 +36,15 @@ export function PhotoViewer({
   live,
   parts,
   edits,
+  children,
 }: {
   photo: PhotoView;
   canEdit: boolean;
   live: boolean;
   parts: readonly PinnablePart[];
   edits: ReturnType<typeof useEdits>;
+  /** What stands under the stage: the other photos. */
+  children: ReactNode;
 }) {
   const { stage, view, whole, percent, ...move } = useView(photo);
   const [mode, setMode] = useState<Mode>(LOOK);
@@ -177,10 +180,7 @@ export function PhotoViewer({
             onPlace={place}
             onMovePin={canEdit ? (pin, to) => void edits.editPin(pin, to) : null}
             onPin={choose}
-            kindOf={kindOf}
-            stateOf={stateOf}
-            litRef={litRef}
-            chosenPin={chosen}
+            drawing={{ kindOf, stateOf, litRef, chosenPin: chosen }}
           />
           {mode.kind === 'name' && (
             <PinForm
@@ -199,6 +199,7 @@ export function PhotoViewer({
             the crosshair with the arrow keys and press Enter. Escape puts it away.
           </p>
         )}
+        {children}
         <p className="sr-only" role="status">
           {across ? `Crosshair ${across}` : `Zoom ${percent} %`}
         </p>
@@ -218,10 +219,7 @@ export function PhotoViewer({
         <PinList
           photo={photo}
           partOf={partOf}
-          kindOf={kindOf}
-          stateOf={stateOf}
-          chosen={chosen}
-          litRef={litRef}
+          drawing={{ kindOf, stateOf, litRef, chosenPin: chosen }}
           canEdit={canEdit && live}
           onChoose={choose}
           onMove={startAim}

@@ -1,17 +1,14 @@
 import type { PhotoView, PinView } from '@/contracts/photos';
-import type { PartKind } from '@/domain/parts/kinds';
-import { PartSymbol, type PartState } from '../shared/PartSymbol';
+import { PartSymbol } from '../shared/PartSymbol';
 import { pointing } from '../shared/pointing';
 import type { PinnablePart } from './panel-props';
+import type { PinDrawing } from './StagePins';
 
 /** The pins of a photo in words; the chosen one with what can be done to it. */
 export function PinList({
   photo,
   partOf,
-  kindOf,
-  stateOf,
-  chosen,
-  litRef,
+  drawing,
   canEdit,
   onChoose,
   onMove,
@@ -20,16 +17,14 @@ export function PinList({
 }: {
   photo: PhotoView;
   partOf: (pin: PinView) => PinnablePart | undefined;
-  kindOf: (pin: PinView) => PartKind | null;
-  stateOf: (pin: PinView) => PartState;
-  chosen: number | null;
-  litRef: string | null;
+  drawing: PinDrawing;
   canEdit: boolean;
   onChoose: (pin: PinView) => void;
   onMove: (pin: PinView) => void;
   onRename: (pin: PinView) => void;
   onRemove: (pin: PinView) => void;
 }) {
+  const { kindOf, stateOf, litRef, chosenPin: chosen } = drawing;
   return (
     <ul className="pin-list">
       {photo.pins.map((pin) => {
