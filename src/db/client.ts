@@ -1,3 +1,4 @@
+import { setTimeout as pause } from 'node:timers/promises';
 import { drizzle, type MySql2Database } from 'drizzle-orm/mysql2';
 import { createPool, type Pool } from 'mysql2/promise';
 
@@ -36,7 +37,7 @@ const codeOf = (error: unknown): string | undefined => {
 /** True when a write met a unique index. */
 export const isDuplicate = (error: unknown): boolean => codeOf(error) === 'ER_DUP_ENTRY';
 
-/** Runs a transaction again when MariaDB chose it as the victim of a deadlock. */
+/** Runs a transaction again, a little later each time, when MariaDB chose it as the victim of a deadlock. */
 export async function inTransaction<T>(
   db: Queryable,
   work: (tx: Queryable) => Promise<T>,
@@ -47,7 +48,8 @@ export async function inTransaction<T>(
     } catch (error) {
       const code = codeOf(error);
       const again = code === 'ER_LOCK_DEADLOCK' || code === 'ER_LOCK_WAIT_TIMEOUT';
-      if (!again || tries === 4) throw error;
+      if (!again || tries === 6) throw error;
+      await pause(5 * 2 ** tries);
     }
   }
 }

@@ -44,7 +44,8 @@ async function instrumentFor(
   now: Date,
 ) {
   const bySerial = and(eq(instruments.modelId, modelId), eq(instruments.serial, serial));
-  const [known] = await tx.select().from(instruments).where(bySerial).for('update');
+  // Read without a lock: locking a row that is not there yet closes the gap to every other intake.
+  const [known] = await tx.select().from(instruments).where(bySerial);
   if (known) {
     if (known.customerId !== customerId)
       await tx
@@ -116,11 +117,12 @@ export async function takeIn(
         );
       return done({ number, claimCode });
     });
-  try {
-    return await attempt();
-  } catch (error) {
-    // Two counters took in the same new model or serial at once: the second finds the first one's row.
-    if (isDuplicate(error)) return attempt();
-    throw error;
+  for (let tries = 1; ; tries++) {
+    try {
+      return await attempt();
+    } catch (error) {
+      // Two counters took in the same new model, then the same serial, at once: the second finds the first one's row.
+      if (!isDuplicate(error) || tries === 3) throw error;
+    }
   }
 }
