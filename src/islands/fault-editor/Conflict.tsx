@@ -3,6 +3,7 @@ import { SECTIONS, sectionLines } from '@/domain/faults/body';
 import { compareTexts } from '@/domain/faults/compare';
 import { SECTION_LABELS } from '@/domain/faults/complete';
 import type { FaultDetail } from '@/contracts/faults';
+import { ComparedText } from '../shared/ComparedText';
 import type { Draft } from './types';
 
 export function Conflict({
@@ -39,17 +40,7 @@ export function Conflict({
       {parts.map(({ name, before, after }) => (
         <div key={name} className="note-section">
           <h3>{name}</h3>
-          <p className="note-body compared">
-            {compareTexts(before, after).map(({ kind, text }, i) =>
-              kind === 'gone' ? (
-                <del key={i}>{text}</del>
-              ) : kind === 'new' ? (
-                <ins key={i}>{text}</ins>
-              ) : (
-                text
-              ),
-            )}
-          </p>
+          <ComparedText changes={compareTexts(before, after)} />
         </div>
       ))}
       <div className="sheet-foot button-row">

@@ -7,6 +7,7 @@ import { partsOf } from './calls';
 import { Conflict } from './Conflict';
 import { FactsForm } from './FactsForm';
 import { Material } from './Material';
+import { putIn } from './put-in';
 import { SaveBar } from './SaveBar';
 import { Section } from './Section';
 import { Toolbar } from './Toolbar';
@@ -83,7 +84,7 @@ export function FaultEditor(props: EditorProps) {
         <div ref={top} tabIndex={-1} className="editor-messages">
           {it.status === 'refused' && !it.theirs && (
             <div className="bar bar-danger" role="alert">
-              <strong>Not saved</strong> <span>{it.reason}</span>
+              <strong>{it.dirty ? 'Not saved' : 'Not done'}</strong> <span>{it.reason}</span>
             </div>
           )}
           {it.restored && (
@@ -149,7 +150,10 @@ export function FaultEditor(props: EditorProps) {
         <Material
           ticket={props.ticket}
           section={SECTION_LABELS[section]}
-          onInsert={(node) => editors[section]?.chain().focus().insertContent(node).run()}
+          onInsert={(node) => {
+            const editor = editors[section];
+            if (editor) putIn(editor, node);
+          }}
         />
         <section className="sheet editor-keys">
           <header className="sheet-head">

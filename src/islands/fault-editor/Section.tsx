@@ -23,6 +23,24 @@ function fitting(parts: readonly BoardPart[], text: string): BoardPart[] {
   return own ? [...found, { ref: text, kind: 'resistor', value: 'as typed' }] : found;
 }
 
+const sameTyping = (a: Typing | null, b: Typing | null) =>
+  a === b ||
+  (a !== null &&
+    b !== null &&
+    a.text === b.text &&
+    a.from === b.from &&
+    a.left === b.left &&
+    a.bottom === b.bottom);
+
+const attributesOf = (name: Name) => ({
+  id: `section-${name}`,
+  role: 'textbox',
+  'aria-multiline': 'true',
+  'aria-label': SECTION_LABELS[name],
+  'aria-describedby': `section-${name}-hint`,
+  class: 'note-body editor-body',
+});
+
 export function Section({
   name,
   blocks,
@@ -53,28 +71,24 @@ export function Section({
         typing: (now) => {
           if (now?.from !== closedAt.current) closedAt.current = null;
           setTyping((before) => {
-            if (before?.text !== now?.text) setChosen(0);
-            return now && closedAt.current === null ? now : null;
+            const next = now && closedAt.current === null ? now : null;
+            if (before?.text !== next?.text) setChosen(0);
+            return sameTyping(before, next) ? before : next;
           });
         },
         key: (event) => keyPressed(event),
       }),
     [],
   );
+  // Kept from render to render: options that look new are set again, and that is an update in itself.
+  const first = useRef(blocks);
+  const content = useMemo(() => toDocument(first.current), []);
+  const editorProps = useMemo(() => ({ attributes: attributesOf(name) }), [name]);
   const editor = useEditor({
     extensions,
     injectCSS: false,
-    content: toDocument(blocks),
-    editorProps: {
-      attributes: {
-        id: `section-${name}`,
-        role: 'textbox',
-        'aria-multiline': 'true',
-        'aria-label': SECTION_LABELS[name],
-        'aria-describedby': `section-${name}-hint`,
-        class: 'note-body editor-body',
-      },
-    },
+    content,
+    editorProps,
     onUpdate: ({ editor: now }) => onChange(name, toBlocks(now.getJSON())),
     onFocus: () => onFocus(name),
   });
@@ -122,7 +136,6 @@ export function Section({
     onReady(name, editor);
   }, [editor, name, onReady]);
 
-  const first = useRef(blocks);
   useEffect(() => {
     if (first.current === blocks) return;
     first.current = blocks;

@@ -17,7 +17,12 @@ export const Caution = Node.create({
     return {
       Enter: () => {
         const { editor } = this;
-        if (!editor.isActive('caution')) return false;
+        const { $from } = editor.state.selection;
+        if ($from.parent.type.name !== 'caution') return false;
+        const next = editor.state.doc.resolve($from.after()).nodeAfter;
+        const atEnd = $from.parentOffset === $from.parent.content.size;
+        if (atEnd && next?.type.name === 'paragraph' && next.content.size === 0)
+          return editor.commands.setTextSelection($from.after() + 1);
         return editor
           .chain()
           .splitBlock()

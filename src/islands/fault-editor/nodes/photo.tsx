@@ -2,13 +2,12 @@ import { Node } from '@tiptap/core';
 import { NodeViewWrapper, ReactNodeViewRenderer, type NodeViewProps } from '@tiptap/react';
 import { wordAttributes } from './words';
 
+const PHOTO_ID = /^[A-Za-z0-9_-]{22}$/;
+
 function PhotoView({ node, selected, deleteNode, updateAttributes }: NodeViewProps) {
   const { id, caption } = node.attrs as { id: string; caption: string };
   return (
-    <NodeViewWrapper
-      as="figure"
-      className={`note-photo editor-block${selected ? ' editor-block-chosen' : ''}`}
-    >
+    <NodeViewWrapper className={`note-photo editor-block${selected ? ' editor-block-chosen' : ''}`}>
       <img
         src={`/api/photos/${id}/page`}
         alt={caption || 'Photo without a caption'}
@@ -41,7 +40,13 @@ export const Photo = Node.create({
   atom: true,
   draggable: true,
   addAttributes: () => wordAttributes(['id', 'caption']),
-  parseHTML: () => [{ tag: 'div[data-photo]' }],
+  // What is pasted may say anything: only an id that can be one is taken.
+  parseHTML: () => [
+    {
+      tag: 'div[data-photo]',
+      getAttrs: (element) => (PHOTO_ID.test(element.getAttribute('data-id') ?? '') ? null : false),
+    },
+  ],
   renderHTML: ({ HTMLAttributes }) => ['div', { ...HTMLAttributes, 'data-photo': '' }],
   renderText: ({ node }) => String(node.attrs['caption']),
   addNodeView: () => ReactNodeViewRenderer(PhotoView),
