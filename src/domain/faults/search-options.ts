@@ -13,13 +13,15 @@ export type NoteDocument = {
   refs: string;
   /** Board, labels it is sold under, family, symptoms, incident, in words. */
   labels: string;
+  /** What the board is: "regulator board of a bench supply". */
+  about: string;
 } & Record<Section, string>;
 
 const same = (term: string) => term;
 
 /** Options of the index; give them to MiniSearch as they are. */
 export const INDEX_OPTIONS = {
-  fields: ['title', 'refs', 'labels', 'symptom', 'cause', 'proof', 'repair'],
+  fields: ['title', 'refs', 'labels', 'about', 'symptom', 'cause', 'proof', 'repair'],
   idField: 'id',
   storeFields: [] as string[],
   tokenize: termsOf,
@@ -28,7 +30,16 @@ export const INDEX_OPTIONS = {
     // Terms come cut already, by search-question.ts.
     tokenize: (term: string) => [term],
     processTerm: same,
-    boost: { title: 4, refs: 4, labels: 2.5, symptom: 2, cause: 1.5, proof: 1, repair: 1 },
+    boost: {
+      title: 4,
+      refs: 4,
+      labels: 2.5,
+      symptom: 2,
+      cause: 1.5,
+      proof: 1,
+      repair: 1,
+      about: 0.5,
+    },
     weights: { fuzzy: 0.35, prefix: 0.6 },
   },
 };

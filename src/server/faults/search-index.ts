@@ -92,6 +92,7 @@ async function readNotes(db: Queryable, ids: number[]): Promise<IndexedNote[]> {
           symptoms: note.symptoms,
           incident: note.incident,
         }),
+        about: board?.about ?? '',
         ...(sections as Record<(typeof SECTIONS)[number], string>),
       },
     };
