@@ -76,13 +76,13 @@ export function PhotoViewer({
   const place = (at: Point) => {
     if (mode.kind !== 'aim') return;
     if (!mode.moving) return setMode({ kind: 'name', at, renaming: null, key: newKey() });
-    void edits.editPin(mode.moving, { x: at.x, y: at.y });
+    void edits.movePin(mode.moving, at);
     lookAgain();
   };
   const name = async (choice: PinChoice) => {
     if (mode.kind !== 'name') return;
     const { at, renaming, key } = mode;
-    const kept = renaming ? edits.editPin(renaming, choice) : edits.addPin(at, choice, key);
+    const kept = renaming ? edits.namePin(renaming, choice) : edits.addPin(at, choice, key);
     if (await kept) lookAgain();
   };
 
@@ -178,7 +178,7 @@ export function PhotoViewer({
             aim={aiming}
             onAim={(at) => mode.kind === 'aim' && setMode({ ...mode, at })}
             onPlace={place}
-            onMovePin={canEdit ? (pin, to) => void edits.editPin(pin, to) : null}
+            onMovePin={canEdit ? (pin, to) => void edits.movePin(pin, to) : null}
             onPin={choose}
             drawing={{ kindOf, stateOf, litRef, chosenPin: chosen }}
           />

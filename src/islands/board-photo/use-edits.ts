@@ -73,16 +73,53 @@ export function useEdits(
     photo.pins.find((other) => other.id === pin.id)?.version ?? pin.version;
   const setPin = (now: PhotoView, pin: PinView) => onPhoto(withPin(now, pin));
 
+  /**
+   * Shows the change before the server has it, and takes it back when the server will not; after a stale edit the
+   * photo already is what the other person made of it, and `undo` leaves it so.
+   */
+  async function shownAtOnce(
+    show: (photo: PhotoView) => PhotoView,
+    undo: (now: PhotoView, before: PhotoView) => PhotoView,
+    keep: () => Promise<boolean>,
+  ): Promise<boolean> {
+    const before = latest(id);
+    if (!before) return false;
+    onPhoto(show(before));
+    const kept = await keep();
+    const now = latest(id);
+    if (!kept && now) onPhoto(undo(now, before));
+    return kept;
+  }
+
+  const changePin = (pin: PinView, body: Point | PinChoice) =>
+    inLine(
+      (photo) =>
+        ask<Routes['editPin']>({
+          method: 'PATCH',
+          path: `${path}/pins/${pin.id}`,
+          body,
+          version: versionOf(photo, pin),
+        }),
+      setPin,
+      keepPin,
+    );
+
   return {
     busy: busy > 0,
     error,
     clear,
 
     edit: (body: EditPhoto) =>
-      inLine(
-        ({ version }) => ask<Routes['edit']>({ method: 'PATCH', path, body, version }),
-        (_now, photo) => onPhoto(photo),
-        keepPhoto,
+      shownAtOnce(
+        (photo) => ({ ...photo, ...body }),
+        (now, { version, side, phase, shared, caption }) =>
+          now.version === version ? { ...now, side, phase, shared, caption } : now,
+        () =>
+          inLine(
+            ({ version }) => ask<Routes['edit']>({ method: 'PATCH', path, body, version }),
+            (_now, photo) => onPhoto(photo),
+            keepPhoto,
+          ),
       ),
 
     remove: () =>
@@ -102,18 +139,14 @@ export function useEdits(
       );
     },
 
-    editPin: (pin: PinView, body: Partial<Point> | PinChoice) =>
-      inLine(
-        (photo) =>
-          ask<Routes['editPin']>({
-            method: 'PATCH',
-            path: `${path}/pins/${pin.id}`,
-            body,
-            version: versionOf(photo, pin),
-          }),
-        setPin,
-        keepPin,
+    movePin: (pin: PinView, { x, y }: Point) =>
+      shownAtOnce(
+        (photo) => withPin(photo, { ...pin, x, y }),
+        (now) => (versionOf(now, pin) === pin.version ? withPin(now, pin) : now),
+        () => changePin(pin, { x, y }),
       ),
+
+    namePin: changePin,
 
     removePin: (pin: PinView) =>
       inLine(
