@@ -39,11 +39,16 @@ async function work({ children, folder }, json) {
   });
   const told = { [testServicesName]: JSON.stringify({ ...services, entry }) };
   const rows = [];
-  for (const name of files()) {
-    await step(`Measuring ${name}`, async () => {
-      rows.push(...(await measure(children, folder, name, told)));
-    });
-  }
+  let failures = 0;
+  for (const name of files())
+    try {
+      await step(`Measuring ${name}`, async () => {
+        rows.push(...(await measure(children, folder, name, told)));
+      });
+    } catch (error) {
+      failures += 1;
+      sayWhy(error);
+    }
   if (rows.length === 0)
     throw new Stop('No file of tests/bench offers rows: nothing was measured.');
   mkdirSync(output, { recursive: true });
@@ -51,6 +56,7 @@ async function work({ children, folder }, json) {
   writeWhole(written, `${text}\n`);
   if (json) process.stdout.write(`${text}\n`);
   else sayTable(rows);
+  return failures > 0 ? 1 : 0;
 }
 
 /** Files that offer rows; the others are what those share. */

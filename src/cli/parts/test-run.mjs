@@ -11,7 +11,7 @@ import { oneRun } from './run.mjs';
 import { say, sayWhy, seconds, step, Stop } from './say.mjs';
 import { databaseCommands } from './services.mjs';
 import { total } from './tally.mjs';
-import { everyPart, runPart } from './test-parts.mjs';
+import { everyPart, output, runPart } from './test-parts.mjs';
 import { startTestServices } from './test-services.mjs';
 
 /** Run the tests named on the command line (all unless `--only a,b`). Answers the exit code. */
@@ -51,6 +51,7 @@ function chosenParts() {
 }
 
 async function work({ children, folder }, chosen, outcomes) {
+  rmSync(`${output}/apps`, { recursive: true, force: true });
   const anyNeeds = (what) => chosen.some((part) => part.needs[what]);
   await step('Free space', () => needRoom(root, packagesAreMissing() ? roomToInstall : roomToRun));
   const programs = [
