@@ -1,7 +1,7 @@
 /** What the readings say, one sentence a part, the measured value beside the predicted one. */
 import { predictUnder } from '../diagnosis/predict';
 import type { DiagnosisAnswer, Fault, PartStanding } from '../diagnosis/types';
-import type { Network } from '../network/types';
+import type { ForcedPart, Network, Ohms } from '../network/types';
 import { violations } from '../network/validate';
 import { failureShare, modesOf } from '../parts/failure-shares';
 import type { Mode } from '../parts/kinds';
@@ -87,6 +87,21 @@ function withCompanions({ hypotheses }: DiagnosisAnswer, fault: Fault): Fault[] 
   return [fault, ...(found?.faults ?? []).filter((one) => !same(one))].slice(0, 2);
 }
 
+/** What the reading would be without this fault: healthy, or with the other one alone where that makes it differ. */
+function shouldBe(
+  judged: Pick<SheetJudgement, 'expected'>,
+  reading: SheetReading,
+  others: readonly ForcedPart[],
+  without: Ohms | undefined,
+): string {
+  const healthy = judged.expected.find((e) => e.reading === reading.id);
+  if (!healthy) return '';
+  const [other] = others;
+  if (other?.mode && without !== undefined && apart(without, healthy.ohms) > TELLING)
+    return `; with ${other.ref} ${modeLabels[other.mode]} alone it would be ${writeExpected(without)}`;
+  return `; healthy it would be ${writeExpected(healthy.ohms)}`;
+}
+
 function suspectSaid(
   network: Network,
   readings: readonly Quoted[],
@@ -100,12 +115,8 @@ function suspectSaid(
   const taken = readings.map((r) => r.taken);
   const [own, ...others] = fitFaults(network, withCompanions(diagnosis, { ref, mode }), taken);
   const fits = predictUnder(network, own ? [own, ...others] : others, taken);
-  const found = mostTelling(
-    readings,
-    netsOf(network, ref),
-    fits,
-    predictUnder(network, others, taken),
-  );
+  const without = predictUnder(network, others, taken);
+  const found = mostTelling(readings, netsOf(network, ref), fits, without);
   const quoted = found ? readings[found.at] : undefined;
   if (!quoted)
     return {
@@ -113,8 +124,7 @@ function suspectSaid(
       reading: null,
     };
   const { reading } = quoted;
-  const healthy = judged.expected.find((e) => e.reading === reading.id);
-  const should = healthy ? `; healthy it would be ${writeExpected(healthy.ohms)}` : '';
+  const should = shouldBe(judged, reading, others, without[found?.at ?? 0]);
   const about =
     own && own.ohms !== 'OL' && mode !== 'short'
       ? ` About ${formatOhms(Number(own.ohms.toPrecision(1)))} across it explains that.`
@@ -125,16 +135,22 @@ function suspectSaid(
   };
 }
 
-function clearedSaid(network: Network, readings: readonly Quoted[], ref: string): Said {
+/** `lead`: the likeliest hypothesis as it fits the readings; a cleared part is weighed beside it. */
+function clearedSaid(
+  network: Network,
+  readings: readonly Quoted[],
+  lead: readonly ForcedPart[],
+  ref: string,
+): Said {
   const part = network.parts.find((p) => p.ref === ref);
   const taken = readings.map((r) => r.taken);
-  const healthy = predictUnder(network, [], taken);
+  const fits = predictUnder(network, lead, taken);
   const modes = part
     ? modesOf(part.kind).sort((a, b) => failureShare(part.kind, b) - failureShare(part.kind, a))
     : [];
   for (const mode of modes) {
-    const under = predictUnder(network, [typicalFault(network, ref, mode)], taken);
-    const found = mostTelling(readings, part?.nets ?? [], healthy, under);
+    const under = predictUnder(network, [...lead, typicalFault(network, ref, mode)], taken);
+    const found = mostTelling(readings, part?.nets ?? [], fits, under);
     const quoted = found ? readings[found.at]?.reading : undefined;
     if (found && quoted)
       return {
@@ -160,11 +176,20 @@ export function sentencesOn(
   const readings = usedReadings(board, sheet);
   const { diagnosis } = judged;
   const able = diagnosis !== null && violations(network).length === 0;
+  const [first] = diagnosis?.hypotheses ?? [];
+  const leads = able && first !== undefined && first.probability > diagnosis.healthy;
+  const lead = leads
+    ? fitFaults(
+        network,
+        first.faults,
+        readings.map((r) => r.taken),
+      )
+    : [];
   return (standing) => {
     if (!able || standing.standing === 'untouched')
       return { words: 'No reading tells of it yet.', reading: null };
     return standing.standing === 'suspect'
       ? suspectSaid(network, readings, judged, diagnosis, standing)
-      : clearedSaid(network, readings, standing.ref);
+      : clearedSaid(network, readings, lead, standing.ref);
   };
 }

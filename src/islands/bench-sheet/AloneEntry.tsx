@@ -2,6 +2,7 @@ import type { Suspects } from '@/contracts/bench';
 import { modeLabels } from '@/domain/parts/words';
 import { PartSymbol, type PartState } from '../shared/PartSymbol';
 import { ProbabilityScale } from '../shared/ProbabilityScale';
+import { glued } from './glued';
 import { pointing } from './pointing';
 
 type Verdict = Suspects['alone'][number];
@@ -52,7 +53,7 @@ export function AloneEntry({
           <strong className={word}>{said}</strong>
           {row > 0 && <span className="remark"> by row {row} alone</span>}
         </p>
-        <p className="remark">{verdict.reasons.join(' ')}</p>
+        <p className="remark">{glued(verdict.reasons.join(' '))}</p>
         {verdict.next && <p className="suspect-next">{verdict.next}</p>}
       </div>
       <ProbabilityScale value={verdict.probability} label={`${verdict.ref} failed`} tone={tone} />

@@ -62,6 +62,10 @@ export function BenchPanel(props: BenchPanelProps) {
     };
   }, [store]);
 
+  const open = (next: Phase) => {
+    if (next === 'after-repair') store.offer();
+    setPhase(next);
+  };
   const locked =
     canEdit && !closed && !cautionsTicked ? (
       <p className="bar bar-caution bench-locked">
@@ -75,7 +79,7 @@ export function BenchPanel(props: BenchPanelProps) {
       <SheetPanel
         sheets={sheets}
         phase={phase}
-        onPhase={setPhase}
+        onPhase={open}
         store={store}
         board={board}
         editable={editable}

@@ -42,6 +42,7 @@ export function FieldCell({
   const options = edit && field !== 'typed' ? grid.choices(field, text, edit.touched) : [];
   const typing = edit !== null && edit.touched && edit.text.trim() !== '';
   const active = edit && edit.pick >= 0 ? edit.pick : typing && options.length > 0 ? 0 : -1;
+  const written = field === 'typed' ? writtenOut(text) : '';
   const described = wrong === undefined ? {} : { 'aria-describedby': wrong };
 
   const input = edit && (
@@ -98,9 +99,7 @@ export function FieldCell({
       {field === 'typed' ? (
         <span className="bench-reading">
           {input ?? <strong className="bench-text">{text}</strong>}
-          <span className="bench-written">
-            <Aligned text={writtenOut(text)} />
-          </span>
+          <span className="bench-written">{written !== '' && <Aligned text={written} />}</span>
         </span>
       ) : (
         (input ?? (

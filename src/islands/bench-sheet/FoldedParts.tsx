@@ -1,6 +1,7 @@
 import { PartSymbol } from '../shared/PartSymbol';
 import { writeProbability } from '../shared/ProbabilityScale';
 import type { BoardPart } from './panel-props';
+import { glued } from './glued';
 import { pointing } from './pointing';
 import type { Standing } from './suspect-order';
 
@@ -38,7 +39,7 @@ export function FoldedParts({
             <PartSymbol kind={part.kind} state={standing} size={44} label="" />
             <div>
               <strong className="mono">{ref}</strong> {part.value}
-              <p className="remark">{said.get(ref) ?? 'No reading tells of it yet.'}</p>
+              <p className="remark">{glued(said.get(ref) ?? 'No reading tells of it yet.')}</p>
             </div>
             <span className="mono">{writeProbability(fault)}</span>
           </li>

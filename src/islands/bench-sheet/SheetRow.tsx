@@ -151,9 +151,10 @@ export function SheetRow({
         <td
           {...plain('expected')}
           className="bench-expected"
+          data-label="healthy"
           aria-label={`Row ${number}, Expected: ${expectedText || 'not known'}`}
         >
-          <Aligned text={expectedText} />
+          {expectedText !== '' && <Aligned text={expectedText} />}
         </td>
       </tr>
       {said && (

@@ -2,6 +2,7 @@ import { modeWords } from '@/domain/bench/sentences';
 import { PartSymbol } from '../shared/PartSymbol';
 import { ProbabilityScale } from '../shared/ProbabilityScale';
 import type { BoardPart } from './panel-props';
+import { glued } from './glued';
 import { pointing } from './pointing';
 import type { Standing } from './suspect-order';
 
@@ -29,10 +30,10 @@ export function SuspectEntry({
       <PartSymbol kind={part.kind} state={mode ?? 'plain'} label="" />
       <div className="suspect-words">
         <p>
-          <strong className="mono">{part.ref}</strong> {part.value}{' '}
+          <strong className="mono">{part.ref}</strong> {glued(part.value)}{' '}
           <strong className="failed">{failed}</strong>
         </p>
-        <p className="remark">{words}</p>
+        <p className="remark">{glued(words)}</p>
       </div>
       <ProbabilityScale value={standing.fault} label={`${part.ref} ${failed}`} tone="danger" />
     </div>

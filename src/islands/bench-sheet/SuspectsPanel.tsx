@@ -3,6 +3,7 @@ import { LOOK_ELSEWHERE, summaryOf } from '@/domain/bench/summary';
 import { ProbabilityScale } from '../shared/ProbabilityScale';
 import { AloneEntry } from './AloneEntry';
 import { FoldedParts } from './FoldedParts';
+import { glued } from './glued';
 import type { Board, Phase } from './panel-props';
 import { isStruck, type Row } from './rows';
 import { gathered } from './suspect-order';
@@ -14,6 +15,14 @@ const WAITING: Readonly<Record<Phase, string>> = {
 };
 const NO_BOARD =
   'The board of this instrument is not known: readings are kept, but nothing can be ranked.';
+
+/** The reason without the call to measure again, which stands before it. */
+function whyAgain(reason: string): string {
+  const why = reason.split(' again: ').at(-1) ?? reason;
+  return why.charAt(0).toUpperCase() + why.slice(1);
+}
+
+const listed = (refs: string[]) => `${refs.slice(0, -1).join(', ')} and ${refs.at(-1) ?? ''}`;
 
 const count = (n: number, one: string, more: string) => `${n} ${n === 1 ? one : more}`;
 
@@ -83,9 +92,8 @@ export function SuspectsPanel({
             <li key={members[0]?.ref} className={members.length > 1 ? 'suspect-group' : undefined}>
               {members.length > 1 && (
                 <p className="suspect-alike">
-                  These readings cannot tell{' '}
-                  <span className="mono">{members.map(({ ref }) => ref).join(', ')}</span> apart:
-                  measure between them.
+                  {listed(members.map(({ ref }) => ref))} look alike to these readings: measure
+                  between them.
                 </p>
               )}
               {members.map((one) => {
@@ -127,7 +135,7 @@ export function SuspectsPanel({
               <strong className="doubtful">
                 Row {numberOf(told?.expected[reading]?.reading)}: measure this one again.
               </strong>{' '}
-              <span className="remark">{reason}</span>
+              <span className="remark">{glued(whyAgain(reason))}</span>
             </li>
           ))}
         </ul>

@@ -20,7 +20,7 @@ export const COLUMN_NAMES: Readonly<Record<Column, string>> = {
   position: 'Switch',
   lifted: 'Lifted',
   typed: 'Reading',
-  scale: 'Against the healthy network',
+  scale: 'Against healthy',
   expected: 'Expected',
 };
 

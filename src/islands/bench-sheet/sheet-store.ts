@@ -45,6 +45,8 @@ export function openSheet(options: Options) {
   /** Rows to strike once the save that is under way has ended. */
   const toStrike = new Set<string>();
   const listeners = new Set<() => void>();
+  /** Offered rows that were struck. */
+  const refused = new Set<string>();
   let made = 0;
   const newKey = () => `n${(made += 1)}`;
 
@@ -58,9 +60,8 @@ export function openSheet(options: Options) {
     options.readings.filter((reading) => reading.phase === phase).map(savedRow);
   const found = opened('as-found');
   const after = opened('after-repair');
-  const offers = editable ? offeredRows(found, after) : [];
   let now: Snapshot = {
-    sheets: { 'as-found': withEntry(found), 'after-repair': withEntry([...after, ...offers]) },
+    sheets: { 'as-found': withEntry(found), 'after-repair': withEntry(after) },
     saves: { 'as-found': 0, 'after-repair': 0 },
   };
 
@@ -123,6 +124,7 @@ export function openSheet(options: Options) {
     const kept = now.sheets[phase].filter((other) => other.key === key || !isStruck(other));
     if (!row.saved) {
       clientKeys.delete(key);
+      if (row.offered) refused.add(key);
       const rows = isBlank(row) ? kept.filter((other) => other.key !== key) : kept;
       publish(phase, rows);
       if (!isBlank(row)) change(phase, key, { state: { is: 'struck' } });
@@ -157,6 +159,13 @@ export function openSheet(options: Options) {
     snapshot: () => now,
     /** Writes cells of a row, and saves the row when nothing is missing. */
     write,
+    /** Offers, after the repair, the points measured as found that have no reading there yet. */
+    offer() {
+      if (!editable) return;
+      const rows = now.sheets['after-repair'].filter((row) => !isBlank(row) || row.offered);
+      const offers = offeredRows(now.sheets['as-found'], rows);
+      publish('after-repair', [...rows, ...offers.filter(({ key }) => !refused.has(key))]);
+    },
     /** Puts cells into the empty row at the end, and answers its key; null when the sheet is full. */
     fillEntry(phase: Phase, cells: Cells): string | null {
       const entry = now.sheets[phase].findLast((row) => isBlank(row) && !isStruck(row));

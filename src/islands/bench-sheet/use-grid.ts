@@ -46,7 +46,8 @@ export function useGrid({ store, phase, board, editable, takeNext }: Options) {
   const go = (to: Cursor) => {
     focusDue.current = true;
     setEdit(null);
-    setCursor(to);
+    // A copy, so that going to where the cursor is moves the focus there too.
+    setCursor({ ...to });
   };
 
   useLayoutEffect(() => {
@@ -208,7 +209,9 @@ export function useGrid({ store, phase, board, editable, takeNext }: Options) {
 
     /** Keys while the cursor stands on a cell. */
     onGridKey(event: React.KeyboardEvent) {
-      if (editing.current || event.target instanceof HTMLButtonElement) return;
+      // What was typed into an input or pressed on a button is theirs, also once the editing has ended.
+      const { target } = event;
+      if (target instanceof HTMLInputElement || target instanceof HTMLButtonElement) return;
       const { column, key } = cursor;
       const keys = [...rowsNow().map((row) => row.key), ...(takeNext ? [NEXT] : [])];
       const row = Math.max(0, keys.indexOf(key));
