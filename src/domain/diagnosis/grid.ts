@@ -9,8 +9,9 @@ export interface Fineness {
   readonly most: number;
 }
 
-/** For screening pairs, and for the final weight. */
+/** For screening pairs, for the final weight of pairs, and for that of singles. */
 export const COARSE: Fineness = { step: 0.8, most: 8 };
+export const MEDIUM: Fineness = { step: 0.55, most: 10 };
 export const FINE: Fineness = { step: 0.4, most: 16 };
 
 /** Width of a node's log-normal as a fraction of the step between nodes: smooth, and hardly blurred. */

@@ -58,7 +58,9 @@ export function predictJoint(
     const zk = evidence.toPart[at + trial.k]!;
     const p = trial.k11[s]! * zj + trial.k12[s]! * zk;
     const q = trial.k12[s]! * zj + trial.k22[s]! * zk;
-    for (let part = 0; part < scene.parts; part++) {
+    const list = trial.bridging ? scene.all : scene.aims[r]!.touched;
+    for (let i = 0; i < list.length; i++) {
+      const part = list[i]!;
       if (part === trial.j || part === trial.k) continue;
       const z =
         evidence.toPart[at + part]! -

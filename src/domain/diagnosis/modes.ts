@@ -12,20 +12,22 @@ export interface PartMode {
   /** Ends of the range, ln Ω. */
   readonly low: number;
   readonly high: number;
+  /** True for a contact that conducts where it should be open: it joins what was apart. */
+  readonly bridges: boolean;
 }
 
-/** A part's healthy value as its mode sees it: a bridged contact is one that should insulate. */
-function nominal(part: NetworkPart, mode: Mode): number {
-  const bridge = part.kind === 'contact' && (mode === 'short' || mode === 'leaky');
-  return bridge ? INSULATING_OHMS : healthyOhms(part);
+function bridging(part: NetworkPart, mode: Mode): boolean {
+  return part.kind === 'contact' && (mode === 'short' || mode === 'leaky');
 }
 
 /** Every single fault of the network, parts in order and each part's modes together. */
 export function partModes(network: Network): PartMode[] {
   return network.parts.flatMap((part, index) =>
     modesOf(part.kind).map((mode) => {
-      const { low, high } = modeRange(mode, nominal(part, mode));
-      return { part: index, mode, low: Math.log(low), high: Math.log(high) };
+      const bridges = bridging(part, mode);
+      // A bridged contact is one that should insulate.
+      const { low, high } = modeRange(mode, bridges ? INSULATING_OHMS : healthyOhms(part));
+      return { part: index, mode, low: Math.log(low), high: Math.log(high), bridges };
     }),
   );
 }

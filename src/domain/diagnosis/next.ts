@@ -52,10 +52,11 @@ export function nextReadings(
     setting: settingIndex(scene.network, scene.modes, settings, { position }),
     cost: position === here ? COSTS.here : COSTS.turn,
   }));
+  const bound = toleranceBound(scene);
   const weigh = (candidates: Candidate[]): Scored[] =>
     best(candidates.filter((one) => !taken(one, wide, readings))).map((one) => ({
       ...one,
-      ...told(one, particles, wide),
+      ...told(one, particles, bound),
     }));
   let scored = weigh(search(inCircuit, wide));
   if (scored.every(({ bits, cost }) => bits / cost < ENOUGH)) {
@@ -83,9 +84,8 @@ function best(candidates: Candidate[]): Candidate[] {
 function told(
   { shown }: Candidate,
   particles: readonly { hypothesis: number; weight: number }[],
-  scene: Scene,
+  bound: Float64Array,
 ): Told {
-  const bound = toleranceBound(scene);
   return mutualInformation({
     count: shown.length,
     hypothesis: particles.map((particle) => particle.hypothesis),

@@ -1,6 +1,6 @@
 import { pairBounds } from './pair-bounds';
-import { COARSE, FINE } from './grid';
-import { apart, reachOf } from './reach';
+import { COARSE, MEDIUM } from './grid';
+import { reachOf } from './reach';
 import type { Singles } from './singles';
 import { screened, weighed } from './weigh';
 import type { Workshop } from './workshop';
@@ -18,6 +18,8 @@ const HOPELESS = 14;
 /** How many pairs are screened, and how many of them are weighed with the full covariance. */
 const MOST_SCREENED = 1500;
 const MOST_WEIGHED = 120;
+/** A pair this far (ln) below the best keeps its screened weight. */
+const SLIGHT = 9;
 
 interface Candidate {
   readonly j: number;
@@ -37,8 +39,7 @@ export function rankPairs(workshop: Workshop, singles: Singles, best: number): H
   const { scene, evidence, priors, trial, joint } = workshop;
   const logOdds = priors.odds.map(Math.log);
   const logShared = priors.shared.map(Math.log);
-  const reach = reachOf(scene);
-  const bounds = pairBounds(scene, evidence);
+  const bounds = pairBounds(scene, evidence, reachOf(scene));
   const found: Hypothesis[] = [];
   const candidates: Candidate[] = [];
   for (let j = 1; j < scene.modes.length; j++) {
@@ -47,7 +48,7 @@ export function rankPairs(workshop: Workshop, singles: Singles, best: number): H
       const partK = scene.modes[k]!.part;
       if (partJ === partK) continue;
       const prior = logOdds[j]! + logOdds[k]! + logShared[partJ * scene.parts + partK]!;
-      if (apart(reach, j, k)) {
+      if (bounds.apart(j, k)) {
         const log = prior + singles.healthy + singles.gain[j]! + singles.gain[k]!;
         if (log > best - HOPELESS) found.push({ j, k, log });
         continue;
@@ -63,8 +64,8 @@ export function rankPairs(workshop: Workshop, singles: Singles, best: number): H
   candidates.forEach(({ j, k, prior, log }, rank) => {
     if (log < best - HOPELESS) return;
     const full =
-      rank < MOST_WEIGHED
-        ? prior + weighed(scene, evidence, trial, joint, j, k, FINE).logLikelihood
+      rank < MOST_WEIGHED && log > best - SLIGHT
+        ? prior + weighed(scene, evidence, trial, joint, j, k, MEDIUM).logLikelihood
         : log + correction(singles, j, k);
     found.push({ j, k, log: full });
   });

@@ -1,7 +1,8 @@
 import { circuitAt, netNumbers } from '@/domain/network/circuit';
+import type { Prepared } from '@/domain/network/drive';
 import { prepare } from '@/domain/network/drive';
 import { healthySpread } from '@/domain/network/healthy';
-import { resistanceBetween } from '@/domain/network/resistance';
+import { ohmmeter } from '@/domain/network/resistance';
 import { sensitivities } from '@/domain/network/sensitivity';
 import { pairTransfer } from '@/domain/network/transfer';
 import type { ForcedPart, Network, Ohms } from '@/domain/network/types';
@@ -11,6 +12,8 @@ import type { Prediction, Reading } from './types';
 
 /** Coverage factor of a 95 % band. */
 const COVERAGE = 2;
+/** Keeps a band relative to nothing finite, Ω. */
+const LEAST_SHOWN = 1e-9;
 
 /** What a meter with this range shows for an ideal resistance. */
 function shown(ohms: Ohms, overRange: number | undefined): Ohms {
@@ -24,21 +27,26 @@ function shown(ohms: Ohms, overRange: number | undefined): Ohms {
  */
 export function predict(network: Network, readings: readonly Reading[]): Prediction[] {
   const spreads = network.parts.map(healthySpread);
+  const numbers = netNumbers(network);
+  const meter = ohmmeter(network);
+  const ready = new Map<string, Prepared>();
+  let first: Prepared | undefined;
   return readings.map((reading) => {
-    const ohms = shown(resistanceBetween(network, reading), reading.overRange);
+    const ohms = shown(meter(reading), reading.overRange);
     if (ohms === 'OL') return { ohms, band: 0 };
-    const circuit = circuitAt(network, reading.position, reading.lifted);
-    const numbers = netNumbers(network);
-    const pair = pairTransfer(
-      prepare(circuit),
-      numbers.get(reading.from)!,
-      numbers.get(reading.to)!,
-    );
+    const key = JSON.stringify([reading.position, reading.lifted]);
+    const known = ready.get(key);
+    const prepared = known ?? prepare(circuitAt(network, reading.position, reading.lifted), first);
+    if (known === undefined) ready.set(key, prepared);
+    first ??= prepared;
+    const pair = pairTransfer(prepared, numbers.get(reading.from)!, numbers.get(reading.to)!);
     let variance = 0;
-    sensitivities(circuit, pair).forEach((share, k) => (variance += (share * spreads[k]!) ** 2));
-    const meter = observe({ ...reading, value: ohms });
-    const meterVariance = meter.variance * ((ohms + meter.floor) / Math.max(ohms, 1e-9)) ** 2;
-    return { ohms, band: COVERAGE * Math.sqrt(variance + meterVariance) };
+    sensitivities(prepared.circuit, pair).forEach(
+      (share, k) => (variance += (share * spreads[k]!) ** 2),
+    );
+    const seen = observe({ ...reading, value: ohms });
+    const own = seen.variance * ((ohms + seen.floor) / Math.max(ohms, LEAST_SHOWN)) ** 2;
+    return { ohms, band: COVERAGE * Math.sqrt(variance + own) };
   });
 }
 
@@ -52,7 +60,6 @@ export function predictUnder(
   faults: readonly ForcedPart[],
   readings: readonly Omit<Reading, 'value'>[],
 ): Ohms[] {
-  return readings.map((reading) =>
-    shown(resistanceBetween(network, reading, faults), reading.overRange),
-  );
+  const meter = ohmmeter(network, faults);
+  return readings.map((reading) => shown(meter(reading), reading.overRange));
 }

@@ -1,5 +1,6 @@
 import { circuitAt, conductsAt, faultActs, netNumbers } from '@/domain/network/circuit';
 import { blocks } from '@/domain/network/connectivity';
+import type { Prepared } from '@/domain/network/drive';
 import { healthyOhms, healthySpread, OPEN_CONTACT_SIEMENS } from '@/domain/network/healthy';
 import type { EdgeTransfers } from '@/domain/network/transfer';
 import { edgeTransfers, pairTransfer } from '@/domain/network/transfer';
@@ -34,6 +35,8 @@ export interface Aim {
   readonly toPart: Float64Array;
   /** 1 for parts of the blocks between the leads: no other can change what is read, bridged contacts apart. */
   readonly touches: Uint8Array;
+  /** Those parts' indices. */
+  readonly touched: Int32Array;
 }
 
 /** The network solved at every setting of the readings: everything that no hypothesis changes. */
@@ -45,6 +48,8 @@ export interface Scene {
   /** Healthy resistance, Ω, and standard deviation of its logarithm, per part. */
   readonly nominal: Float64Array;
   readonly spread: Float64Array;
+  /** All part indices. */
+  readonly all: Int32Array;
   readonly settings: Setting[];
   readonly aims: readonly Aim[];
 }
@@ -78,7 +83,8 @@ export function sceneOf(
   const nominal = Float64Array.from(network.parts, healthyOhms);
   const spread = Float64Array.from(network.parts, healthySpread);
   const parts = network.parts.length;
-  return { network, parts, modes, numbers, nominal, spread, settings, aims };
+  const all = Int32Array.from(network.parts.keys());
+  return { network, parts, all, modes, numbers, nominal, spread, settings, aims };
 }
 
 /** Finds or solves the setting of a probe. */
@@ -94,7 +100,8 @@ export function settingIndex(
     (s) => s.position === position && s.lifted.join('\n') === lifted.join('\n'),
   );
   if (known >= 0) return known;
-  return settings.push(solveSetting(network, modes, position, lifted)) - 1;
+  const similar = settings[0]?.base.prepared;
+  return settings.push(solveSetting(network, modes, position, lifted, similar)) - 1;
 }
 
 function padded(values: ArrayLike<number>, extra: number): Float64Array {
@@ -109,6 +116,7 @@ function solveSetting(
   modes: readonly PartMode[],
   position: string | undefined,
   lifted: readonly string[],
+  similar: Prepared | undefined,
 ): Setting {
   const exact = circuitAt(network, position, lifted);
   const conducts = network.parts.map((part) => conductsAt(part, position));
@@ -117,7 +125,7 @@ function solveSetting(
   const edges = exact.edges.map((edge, index) =>
     conducts[index] || isLifted[index] ? edge : { ...edge, siemens: OPEN_CONTACT_SIEMENS },
   );
-  const base = edgeTransfers({ nets: exact.nets, edges });
+  const base = edgeTransfers({ nets: exact.nets, edges }, similar);
   const count = edges.length;
   const between = new Float64Array((count + 1) * (count + 1));
   for (let k = 0; k < count; k++)
@@ -150,8 +158,8 @@ export function aimAt(setting: Setting, index: number, a: number, b: number): Ai
   setting.block.forEach((number, k) => {
     if (number >= 0 && Math.abs(pair.toEdge[k]!) * setting.siemens[k]! > 1e-9) touched.add(number);
   });
-  setting.block.forEach((number, k) => {
-    if (touched.has(number)) touches[k] = 1;
-  });
-  return { setting: index, a, b, ohms: pair.ohms, toPart: padded(pair.toEdge, 0), touches };
+  const live = [...setting.block.keys()].filter((k) => touched.has(setting.block[k]!));
+  for (const k of live) touches[k] = 1;
+  const toPart = padded(pair.toEdge, 0);
+  return { setting: index, a, b, ohms: pair.ohms, toPart, touches, touched: Int32Array.from(live) };
 }

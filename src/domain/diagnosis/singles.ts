@@ -30,7 +30,8 @@ export function weighSingles(workshop: Workshop): Singles {
   const full = new Float64Array(rough.length);
   const gain = new Float64Array(rough.length);
   rough.forEach((value, m) => {
-    const hopeless = value < best - HOPELESS;
+    // Far off, or seen by no reading at all: screening says all there is.
+    const hopeless = value < best - HOPELESS || value === roughHealthy;
     gain[m] = value - roughHealthy;
     full[m] = healthy + gain[m]!;
     if (hopeless) return;

@@ -16,6 +16,8 @@ export interface Trial {
   /** Parts changed; the number of parts where none is. */
   j: number;
   k: number;
+  /** True when a contact may conduct where it should be open: parts no reading touched may matter then. */
+  bridging: boolean;
   /** How far the readings would move the faults' ln Ω, left by the screening. */
   shiftJ: number;
   shiftK: number;
@@ -40,6 +42,7 @@ export function newTrial(scene: Scene): Trial {
   return {
     j: scene.parts,
     k: scene.parts,
+    bridging: false,
     shiftJ: 0,
     shiftK: 0,
     row: scene.parts + 1,
@@ -70,6 +73,8 @@ export function setTrial(
   const row = scene.parts + 1;
   trial.j = j;
   trial.k = k;
+  trial.bridging =
+    (modeJ >= 0 && scene.modes[modeJ]!.bridges) || (modeK >= 0 && scene.modes[modeK]!.bridges);
   for (let s = 0; s < scene.settings.length; s++) {
     const setting = scene.settings[s]!;
     const newJ = modeJ < 0 ? 0 : siemensIn(setting, j, modeJ, lnJ);

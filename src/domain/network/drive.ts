@@ -9,7 +9,8 @@ export interface Prepared {
   readonly component: Int32Array;
   /** Symmetric matrix of conductance between nets, S, row by row; the diagonal is not used. */
   readonly siemens: Float64Array;
-  /** Nets of each component in order of least degree, so that few new edges arise. */
+  /** All nets in the order of elimination, and those of each component. */
+  readonly sequence: Int32Array;
   readonly order: readonly Int32Array[];
   readonly workspace: Workspace;
 }
@@ -24,8 +25,11 @@ export interface Drive {
   readonly volts: Float64Array;
 }
 
-/** Sums parallel edges into the conductance matrix and chooses the order of elimination. */
-export function prepare(circuit: Circuit): Prepared {
+/**
+ * Sums parallel edges into the conductance matrix and chooses the order of elimination: by least degree, so
+ * that few new edges arise, or that of a similar circuit, which saves the search. Any order is right.
+ */
+export function prepare(circuit: Circuit, similar?: Prepared): Prepared {
   const n = circuit.nets;
   const siemens = new Float64Array(n * n);
   for (const { a, b, siemens: g } of circuit.edges) {
@@ -35,9 +39,10 @@ export function prepare(circuit: Circuit): Prepared {
   }
   const component = components(circuit);
   const order: Int32Array[] = new Array<Int32Array>(n);
-  const all = leastDegree(siemens, n);
-  for (const net of component) order[net] ??= all.filter((other) => component[other] === net);
-  return { circuit, component, siemens, order, workspace: newWorkspace(n) };
+  const sequence = similar?.sequence ?? leastDegree(siemens, n);
+  for (const net of component) order[net] ??= sequence.filter((other) => component[other] === net);
+  const workspace = similar?.workspace ?? newWorkspace(n);
+  return { circuit, component, siemens, sequence, order, workspace };
 }
 
 /**

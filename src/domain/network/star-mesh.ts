@@ -31,19 +31,25 @@ export function newWorkspace(nets: number): Workspace {
 
 /** Nets in order of least degree, counting the edges that arise on the way. */
 export function leastDegree(siemens: Float64Array, nets: number): Int32Array {
-  const near = Array.from({ length: nets }, () => new Set<number>());
-  for (let i = 0; i < nets; i++)
-    for (let j = 0; j < nets; j++) if (i !== j && siemens[i * nets + j]! > 0) near[i]!.add(j);
-  const left = new Set(near.keys());
+  const joined = Uint8Array.from(siemens, (g) => (g > 0 ? 1 : 0));
+  const degree = new Int32Array(nets);
+  for (let i = 0; i < nets; i++) for (let j = 0; j < nets; j++) degree[i]! += joined[i * nets + j]!;
+  const left = Array.from({ length: nets }, (_, net) => net);
   const order = new Int32Array(nets);
   for (let step = 0; step < nets; step++) {
-    let best = -1;
-    for (const net of left) if (best < 0 || near[net]!.size < near[best]!.size) best = net;
-    order[step] = best;
-    left.delete(best);
-    for (const i of near[best]!) {
-      near[i]!.delete(best);
-      for (const j of near[best]!) if (i !== j) near[i]!.add(j);
+    let at = 0;
+    for (let i = 1; i < left.length; i++) if (degree[left[i]!]! < degree[left[at]!]!) at = i;
+    const net = left[at]!;
+    order[step] = net;
+    left.splice(at, 1);
+    const near = left.filter((other) => joined[net * nets + other] === 1);
+    for (const one of near) {
+      degree[one]! -= 1;
+      for (const other of near) {
+        if (one === other || joined[one * nets + other] === 1) continue;
+        joined[one * nets + other] = 1;
+        degree[one]! += 1;
+      }
     }
   }
   return order;

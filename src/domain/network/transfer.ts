@@ -25,17 +25,17 @@ export interface PairTransfer {
   readonly toEdge: Float64Array;
 }
 
-function acrossEdges(circuit: Circuit, driven: Drive): Float64Array {
-  const across = new Float64Array(circuit.edges.length);
-  circuit.edges.forEach((edge, index) => {
-    if (edge.siemens > 0) across[index] = driven.volts[edge.a]! - driven.volts[edge.b]!;
-  });
+function acrossEdges(circuit: Circuit, { volts }: Drive, across: Float64Array): Float64Array {
+  for (let k = 0; k < across.length; k++) {
+    const edge = circuit.edges[k]!;
+    across[k] = edge.siemens > 0 ? volts[edge.a]! - volts[edge.b]! : 0;
+  }
   return across;
 }
 
-/** Drives every conducting edge once. Errors of a transfer are relative to the smaller of both resistances. */
-export function edgeTransfers(circuit: Circuit): EdgeTransfers {
-  const prepared = prepare(circuit);
+/** Drives every conducting edge once (`similar`: see `prepare`). Errors of a transfer are relative to the smaller of both resistances. */
+export function edgeTransfers(circuit: Circuit, similar?: Prepared): EdgeTransfers {
+  const prepared = prepare(circuit, similar);
   const count = circuit.edges.length;
   const ohms = new Float64Array(count);
   const away = new Float64Array(count).fill(1);
@@ -47,7 +47,7 @@ export function edgeTransfers(circuit: Circuit): EdgeTransfers {
     const driven = drive(prepared, edge.a, edge.b, k);
     ohms[k] = driven.ohms;
     away[k] = driven.away;
-    between.set(acrossEdges(circuit, driven), k * count);
+    acrossEdges(circuit, driven, between.subarray(k * count, (k + 1) * count));
     volts.set(driven.volts, k * circuit.nets);
   }
   for (let j = 1; j < count; j++)
@@ -61,7 +61,9 @@ export function edgeTransfers(circuit: Circuit): EdgeTransfers {
 /** Drives a pair of nets once. */
 export function pairTransfer(prepared: Prepared, a: number, b: number): PairTransfer {
   const driven = drive(prepared, a, b);
-  return { ohms: driven.ohms, toEdge: acrossEdges(prepared.circuit, driven) };
+  const { circuit } = prepared;
+  const toEdge = acrossEdges(circuit, driven, new Float64Array(circuit.edges.length));
+  return { ohms: driven.ohms, toEdge };
 }
 
 /**
