@@ -23,10 +23,9 @@ export function PhotoPanel({ ticketNumber, canEdit, parts, initial }: PhotoPanel
   const onPhoto = (photo: PhotoView) =>
     keep((all) => all.map((other) => (other.id === photo.id ? photo : other)));
   const onGone = (id: string) => keep((all) => all.filter((other) => other.id !== id));
-  const onReady = (photo: PhotoView) => {
+  // What somebody is looking at stays in the stage; the new one joins the others under it.
+  const onReady = (photo: PhotoView) =>
     keep((all) => [...all.filter((other) => other.id !== photo.id), photo]);
-    setWanted((before) => before ?? photo.id);
-  };
 
   const photo = photos.find(({ id }) => id === wanted) ?? photos[0];
   const find = (id: string) => latest.current.find((other) => other.id === id);

@@ -87,7 +87,7 @@ export function PhotoStage(props: StageProps) {
       ref={stageRef}
       className={`photo-stage${whole ? '' : ' photo-stage-close'}${aim ? ' photo-stage-aim' : ''}`}
       role="application"
-      aria-label={`${photoWords(photo)}. Plus and minus zoom, arrow keys move, 0 shows the whole photo.`}
+      aria-label={`${photoWords(photo)}. Plus and minus zoom, arrow keys move, 0 shows the whole photo.${props.onMovePin ? ' P sets a pin.' : ''}`}
       tabIndex={0}
       onKeyDown={props.onKey}
       {...gestures}

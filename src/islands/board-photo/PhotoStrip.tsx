@@ -1,5 +1,5 @@
 import type { PhotoView } from '@/contracts/photos';
-import { counted, photoTitle, photoWords } from './words';
+import { counted, photoTitle } from './words';
 
 /** The photos as a contact sheet. Links, so that without script each opens in full. */
 export function PhotoStrip({
@@ -26,7 +26,7 @@ export function PhotoStrip({
           >
             <img
               src={`/api/photos/${photo.id}/thumb`}
-              alt={photoWords(photo)}
+              alt={photo.caption}
               width={photo.width}
               height={photo.height}
               loading="lazy"

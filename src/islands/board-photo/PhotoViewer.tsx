@@ -127,7 +127,7 @@ export function PhotoViewer({
               <button
                 className="button button-small"
                 type="button"
-                aria-pressed={mode.kind === 'aim' && !mode.moving}
+                aria-keyshortcuts="p"
                 disabled={!live}
                 onClick={() => (mode.kind === 'aim' ? lookAgain() : startAim(null))}
               >
@@ -193,12 +193,11 @@ export function PhotoViewer({
             />
           )}
         </div>
-        {mode.kind === 'aim' && (
-          <p className="field-hint">
-            {mode.moving ? `Click where ${mode.moving.label} belongs` : 'Click the part'}, or move
-            the crosshair with the arrow keys and press Enter. Escape puts it away.
-          </p>
-        )}
+        <p className={mode.kind === 'aim' ? 'photo-hint' : 'photo-hint photo-hint-mouse'}>
+          {mode.kind !== 'aim'
+            ? `Wheel zooms, dragging moves; so do + − 0 and the arrow keys.${canEdit ? ' P sets a pin.' : ''}`
+            : `${mode.moving ? `Click where ${mode.moving.label} belongs` : 'Click the part'}, or move the crosshair with the arrow keys and press Enter. Escape puts it away.`}
+        </p>
         {children}
         <p className="sr-only" role="status">
           {across ? `Crosshair ${across}` : `Zoom ${percent} %`}
