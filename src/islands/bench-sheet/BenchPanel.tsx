@@ -75,7 +75,7 @@ export function BenchPanel(props: BenchPanelProps) {
       </p>
     ) : null;
   return (
-    <div className="columns">
+    <div className="columns bench-columns">
       <SheetPanel
         sheets={sheets}
         phase={phase}

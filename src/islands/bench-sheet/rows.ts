@@ -101,14 +101,18 @@ export const isBlank = ({ saved, cells }: Row): boolean => !saved && cells.typed
 
 export const isStruck = ({ state }: Row): boolean => state.is === 'struck';
 
-/** An empty row after the others: it copies From and the switch position of the row above. */
+/** An empty row after the others: it copies the switch position of the row above, and From unless it is a part. */
 export function entryAfter(rows: readonly Row[], key: string): Row {
   const above = rows.findLast((row) => !isStruck(row));
   const place = rows.reduce((most, row) => Math.max(most, row.place + 1), 0);
   return {
     key,
     place,
-    cells: { ...EMPTY, from: above?.cells.from ?? '', position: above?.cells.position ?? '' },
+    cells: {
+      ...EMPTY,
+      from: above && above.cells.to !== '' ? above.cells.from : '',
+      position: above?.cells.position ?? '',
+    },
     saved: null,
     state: { is: 'draft' },
     offered: false,
