@@ -1,0 +1,128 @@
+/** A photograph of a board: the file a camera would have made of it, and where each part is in it. */
+import sharp from 'sharp';
+import type { DemoBoard } from '../content';
+import { chanceFrom } from '../chance';
+import type { Wear } from './bodies/brush';
+import { benchTop } from './bench-top';
+import { boardLayer, reliefLayer } from './board-layer';
+import { bodyLayer, bodyMiddle, contactLayer, marksLayer, shadowLayer } from './body-layer';
+import { developed } from './develop';
+import { faceOf } from './face';
+import { framed, shareOf, svgOf, type Frame } from './frame';
+import { at, polyline, type Point, type Side } from './geometry';
+import { Paints } from './paint';
+import { planOf } from './plan';
+import type { Scene } from './scene';
+
+export type Shot = {
+  board: DemoBoard;
+  side: Side;
+  /** Parts that are not as they left the factory. */
+  wear: ReadonlyMap<string, Wear>;
+  /** Pixels of the finished picture. */
+  width: number;
+  height: number;
+  /** What is in the middle and how many millimetres are seen across; the whole board when left out. */
+  close?: { ref: string; span: number } | undefined;
+  seed: number;
+};
+
+export type Photograph = {
+  jpeg: Buffer;
+  /** Shares of width and height, for every part that is seen. */
+  places: Map<string, Point>;
+};
+
+/** The sensor is a little coarser than the picture: edges come out soft, as they do. */
+const SENSOR = 0.84;
+
+function frameFor(shot: Shot, scene: Omit<Scene, 'frame' | 'paints'>): Frame {
+  const chance = chanceFrom(shot.seed * 31 + 5);
+  const { face } = scene;
+  const [width, height] = [Math.round(shot.width * SENSOR), Math.round(shot.height * SENSOR)];
+  const whole = Math.max(face.width, (face.height * width) / height) * chance.between(1.1, 1.15);
+  const wander = () => chance.between(-1, 1) * whole * 0.008;
+  const part = shot.close && scene.plan.parts.find((p) => p.ref === shot.close?.ref);
+  const target = part ? face.flip(bodyMiddle(part)) : at(face.width / 2, face.height / 2);
+  const middle = at(target.x + wander(), target.y + wander());
+  const tilt = part ? chance.between(-7, 7) : chance.between(-2, 2);
+  return framed(width, height, middle, shot.close?.span ?? whole, tilt);
+}
+
+const raw = (svg: Buffer) => sharp(svg, { limitInputPixels: false }).ensureAlpha().raw().toBuffer();
+
+/** A black-on-nothing drawing as darkness, made small, blurred and brought to size. */
+async function darkness(svg: Buffer, frame: Frame, blur: number): Promise<Buffer> {
+  const { data, info } = await sharp(svg)
+    .extractChannel('alpha')
+    .blur(blur)
+    .raw()
+    .toBuffer({ resolveWithObject: true });
+  return sharp(data, { raw: info })
+    .resize(frame.width, frame.height, { fit: 'fill', kernel: 'cubic' })
+    .extractChannel(0)
+    .raw()
+    .toBuffer();
+}
+
+/** Takes the photograph. */
+export async function photographed(shot: Shot): Promise<Photograph> {
+  const plan = planOf(shot.board);
+  const face = faceOf(plan, shot.side);
+  const frame = frameFor(shot, { plan, face, wear: shot.wear });
+  const paints = new Paints('p');
+  const scene: Scene = { plan, face, frame, wear: shot.wear, paints };
+  const board = boardLayer(scene, marksLayer(scene));
+  const bodies = bodyLayer(scene);
+  const relief = reliefLayer(scene);
+  const definitions = paints.definitions();
+  const small = 0.25;
+  const outline = `<path d="${polyline(face.outline)}z" transform="translate(1.1 1.5)"/>`;
+  const chance = chanceFrom(shot.seed);
+  const px = (mm: number) => Math.max(0.5, mm * frame.scale * small);
+  const layers = {
+    width: frame.width,
+    height: frame.height,
+    bench: await benchTop(plan.floor.bench, frame.width, frame.height, shot.seed),
+    board: await raw(svgOf(frame, board, definitions)),
+    bodies: await raw(svgOf(frame, bodies, definitions)),
+    relief: await sharp(svgOf(frame, relief, definitions))
+      .extractChannel(0)
+      .raw()
+      .toBuffer(),
+    cast: await darkness(svgOf(frame, shadowLayer(scene), '', small), frame, px(0.75)),
+    contact: await darkness(svgOf(frame, contactLayer(scene), '', small), frame, px(0.3)),
+    under: await darkness(svgOf(frame, outline, '', small), frame, px(1.6)),
+  };
+  const warm = chance.between(-0.025, 0.03);
+  const exposure = chance.between(1.06, 1.14);
+  const pixels = developed(layers, {
+    glare: {
+      x: chance.between(0.15, 0.4),
+      y: chance.between(-0.05, 0.3),
+      strength: chance.between(0.07, 0.12),
+    },
+    balance: [exposure * (1 + warm), exposure, exposure * (1 - warm)],
+    seed: shot.seed,
+  });
+  const jpeg = await sharp(pixels, {
+    raw: { width: frame.width, height: frame.height, channels: 3 },
+  })
+    .resize(shot.width, shot.height, { kernel: 'cubic', fit: 'fill' })
+    .jpeg({ quality: 88, chromaSubsampling: '4:2:0' })
+    .toBuffer();
+  return { jpeg, places: placesOf(scene) };
+}
+
+/** Every part of the board file that is seen on this side and lies in the picture. */
+function placesOf({ plan, face, frame }: Scene): Map<string, Point> {
+  const places = new Map<string, Point>();
+  const listed = new Set(plan.board.parts.map((part) => part.ref));
+  for (const part of plan.parts) {
+    const seen = part.side === face.side || part.pads.some((pad) => pad.drill > 0);
+    if (!seen || !listed.has(part.ref)) continue;
+    const p = shareOf(frame, face.flip(part.side === face.side ? bodyMiddle(part) : part.at));
+    if (p.x > 0.02 && p.x < 0.98 && p.y > 0.02 && p.y < 0.98) places.set(part.ref, p);
+  }
+  return places;
+}

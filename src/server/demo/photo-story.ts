@@ -1,0 +1,141 @@
+/** Which demo tickets have photos, and what was photographed: the harm before the repair, the new parts after it. */
+import { and, asc, eq, inArray } from 'drizzle-orm';
+import type { Queryable } from '@/db/client';
+import { ticketEvents, tickets } from '@/db/schema/tickets';
+import type { PhotoPhase } from '@/domain/photos/files';
+import type { Wear } from './board-drawing/bodies/brush';
+import { wearOf } from './board-drawing/wear';
+import type { DemoBoard, DemoScenario } from './content';
+
+/** One picture of a ticket's board. */
+export type Picture = {
+  phase: PhotoPhase;
+  /** The whole board, or close up on the part that failed. */
+  close: boolean;
+  caption: string;
+  shared: boolean;
+  at: Date;
+};
+
+export type Story = {
+  number: string;
+  board: DemoBoard;
+  faults: DemoScenario['faults'];
+  wear: ReadonlyMap<string, Wear>;
+  pictures: Picture[];
+};
+
+const MINUTE = 60_000;
+/** Close-ups are for what can be seen; these faults leave a mark. */
+const SEEN = [
+  'ptc-mov',
+  'mov-short',
+  'fuse-ma',
+  'cx-mov',
+  'ptc-open',
+  'shunt-ma',
+  'it-fuse',
+  'ps-fuse',
+  'clamp-22',
+  'cx-ptc',
+  'contact-ohms',
+  'ps-pass',
+  'cx-coil',
+];
+
+type Row = { id: number; number: string; symptomText: string; begun: Date; checked: Date | null };
+
+/** The tickets that came to the bench, oldest first, with when they were opened and when the repair was checked. */
+async function benchTickets(db: Queryable): Promise<Row[]> {
+  const rows = await db
+    .select({
+      id: tickets.id,
+      number: tickets.number,
+      symptomText: tickets.symptomText,
+      step: ticketEvents.step,
+      at: ticketEvents.at,
+    })
+    .from(ticketEvents)
+    .innerJoin(tickets, eq(tickets.id, ticketEvents.ticketId))
+    .where(
+      and(
+        eq(ticketEvents.kind, 'step'),
+        inArray(ticketEvents.step, ['begin', 'begin-release-check']),
+      ),
+    )
+    .orderBy(asc(tickets.id), asc(ticketEvents.id));
+  const found = new Map<number, Row>();
+  for (const { id, number, symptomText, step, at } of rows) {
+    const known = found.get(id);
+    if (step === 'begin' && !known)
+      found.set(id, { id, number, symptomText, begun: at, checked: null });
+    else if (step !== 'begin' && known) known.checked = at;
+  }
+  return [...found.values()];
+}
+
+function picturesOf(row: Row, story: Pick<Story, 'faults'>, shared: boolean): Picture[] {
+  const refs = story.faults.map(({ ref }) => ref).join(' and ');
+  const later = (from: Date, minutes: number) => new Date(from.getTime() + minutes * MINUTE);
+  const before: Picture[] = [
+    {
+      phase: 'before',
+      close: false,
+      caption: 'As it came in, nothing touched.',
+      shared: false,
+      at: later(row.begun, 12),
+    },
+    {
+      phase: 'before',
+      close: true,
+      caption: `${refs} as found.`,
+      shared,
+      at: later(row.begun, 15),
+    },
+  ];
+  if (!row.checked) return before;
+  const done = later(row.checked, -18);
+  return [
+    ...before,
+    {
+      phase: 'after',
+      close: true,
+      caption: `${refs} replaced, flux not yet washed off.`,
+      shared,
+      at: done,
+    },
+  ];
+}
+
+/**
+ * The stories of up to `most` tickets, each of another fault; repaired ones and open ones by turns, as far as there are
+ * both. Every other one shares its close-ups with the customer.
+ */
+export async function photoStories(
+  db: Queryable,
+  boards: readonly DemoBoard[],
+  scenarios: readonly DemoScenario[],
+  most: number,
+): Promise<Story[]> {
+  const rows = await benchTickets(db);
+  const stories: Story[] = [];
+  for (const key of SEEN) {
+    if (stories.length === most) break;
+    const scenario = scenarios.find((s) => s.key === key);
+    const board = boards.find((b) => b.code === scenario?.board);
+    if (!scenario || !board) continue;
+    const candidates = rows.filter((row) => row.symptomText === scenario.text);
+    const wanted = stories.length % 2 === 0;
+    const row = candidates.find((c) => (c.checked !== null) === wanted) ?? candidates[0];
+    if (!row) continue;
+    const { faults } = scenario;
+    const wear = new Map<string, Wear>();
+    for (const { ref, ohms } of faults) {
+      const part = board.parts.find((p) => p.ref === ref);
+      if (part) wear.set(ref, wearOf(part.kind, ohms));
+    }
+    const pictures = picturesOf(row, { faults }, stories.length % 2 === 0);
+    stories.push({ number: row.number, board, faults, wear, pictures });
+  }
+  return stories;
+}
