@@ -57,7 +57,9 @@ async function checkPointers(tx: Queryable, input: Input): Promise<Refusal | nul
         inArray(photos.publicId, [...new Set(shown.map((p) => p.id))]),
         eq(photos.state, 'ready'),
       ),
-    );
+    )
+    // A photo that is just being removed is waited for, and one that stands stays until this is written.
+    .for('update');
   const missing = shown.find((p) => !known.some((k) => k.id === p.id));
   return missing
     ? refuseField(`body.${missing.section}`, 'A photo in it is not there any more: take it out.')

@@ -18,7 +18,7 @@ import { fromStore, StoreTrouble } from '../storage/trouble';
 import { leaveEvent } from '../tickets/commands';
 import { finishPhoto } from './finish';
 import { removeUnclaimed, UPLOADS } from './objects';
-import { countPhotos, photoByPublicId, photoView, ticketOfPhotos } from './queries';
+import { countPhotos, noteThatShows, photoByPublicId, photoView, ticketOfPhotos } from './queries';
 import type { PhotoRow, PhotoShop } from './types';
 
 type Bench = Granted<'ticket.bench'>;
@@ -158,19 +158,26 @@ export async function removePhoto(
 ): Promise<Outcome<null>> {
   const row = await photoByPublicId(shop.db, id);
   if (!row) return absent('photo');
-  const removed = await inTransaction(shop.db, async (tx) => {
-    const [result] = await tx
-      .delete(photos)
-      .where(and(eq(photos.id, row.id), eq(photos.version, version)));
-    if (result.affectedRows !== 1) return false;
+  const mine = and(eq(photos.id, row.id), eq(photos.version, version));
+  const refusal = await inTransaction(shop.db, async (tx) => {
+    // The lock makes a note that is just being saved with this photo wait, or be seen here.
+    const [held] = await tx.select({ id: photos.id }).from(photos).where(mine).for('update');
+    if (!held) return row.state === 'ready' ? stale(shop, row, version) : absent('photo');
+    const note = await noteThatShows(tx, row.publicId);
+    if (note !== null)
+      return refuse(
+        'conflict',
+        `The fault note “${note}” shows this photo: take it out there first.`,
+      );
+    await tx.delete(photos).where(mine);
     if (row.ticketId !== null && row.state === 'ready') {
-      const note = `Photo removed: ${row.side}, ${row.phase} repair`;
-      const event = { kind: 'photo', step: 'removed', note, open: false } as const;
+      const words = `Photo removed: ${row.side}, ${row.phase} repair`;
+      const event = { kind: 'photo', step: 'removed', note: words, open: false } as const;
       await leaveEvent(tx, row.ticketId, actor, event, now);
     }
-    return true;
+    return null;
   });
-  if (!removed) return row.state === 'ready' ? stale(shop, row, version) : absent('photo');
+  if (refusal) return refusal;
   try {
     if (row.uploadKey) await fromStore(shop.store.remove(row.uploadKey));
     if (row.sha256) await removeUnclaimed(shop, row.sha256);

@@ -1,7 +1,8 @@
 /** Reading photos and pins. */
-import { and, asc, count, eq, inArray, ne } from 'drizzle-orm';
+import { and, asc, count, eq, inArray, ne, or, sql } from 'drizzle-orm';
 import type { PhotoView, PinView } from '@/contracts/photos';
 import type { Queryable } from '@/db/client';
+import { faultNotes, faultRevisions } from '@/db/schema/faults';
 import { users } from '@/db/schema/people';
 import { photos, pins } from '@/db/schema/photos';
 import { boardParts } from '@/db/schema/shop';
@@ -151,19 +152,21 @@ export async function photosOfTicket(db: Queryable, ticketId: number): Promise<P
   return rows.map((row) => asView(row, marks.filter((pin) => pin.photoId === row.key).map(asPin)));
 }
 
-/** What the customer sees of a ticket's photos: the shared ones, without the bench's pins and names. */
-export async function sharedPhotos(db: Queryable, ticketId: number) {
-  const rows = await db
-    .select({
-      id: photos.publicId,
-      side: photos.side,
-      phase: photos.phase,
-      caption: photos.caption,
-      width: photos.width,
-      height: photos.height,
-    })
-    .from(photos)
-    .where(and(eq(photos.ticketId, ticketId), eq(photos.state, 'ready'), eq(photos.shared, true)))
-    .orderBy(asc(photos.phase), asc(photos.id));
-  return rows.map((row) => ({ ...row, width: row.width ?? 0, height: row.height ?? 0 }));
+/** The title of a fault note whose published or latest text shows the photo, or null. */
+export async function noteThatShows(db: Queryable, publicId: string): Promise<string | null> {
+  const [note] = await db
+    .select({ title: faultNotes.title })
+    .from(faultRevisions)
+    .innerJoin(faultNotes, eq(faultNotes.id, faultRevisions.noteId))
+    .where(
+      and(
+        or(
+          eq(faultRevisions.revision, faultNotes.revision),
+          eq(faultRevisions.revision, faultNotes.publishedRevision),
+        ),
+        sql`LOCATE(${publicId}, ${faultRevisions.body}) > 0`,
+      ),
+    )
+    .limit(1);
+  return note?.title ?? null;
 }
