@@ -50,6 +50,8 @@ export const PersonChange = z
   .partial()
   .refine((change) => Object.values(change).some((value) => value !== undefined), {
     message: 'Nothing was given: one of name, role, disabled, secondFactor is needed.',
+    // A member that was given and refused is told of by itself.
+    when: ({ issues }) => issues.length === 0,
   });
 export type PersonChange = z.output<typeof PersonChange>;
 
