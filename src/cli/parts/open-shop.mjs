@@ -1,10 +1,10 @@
 // What `npm start` does, step by step, until the shop is open.
-import { existsSync, rmSync, writeFileSync } from 'node:fs';
+import { existsSync } from 'node:fs';
 import { startApp } from './app.mjs';
 import { ensureBuild, presentBuild } from './build.mjs';
 import { missingPackages } from './commands.mjs';
 import { needRoom, roomToInstall, roomToRun } from './disk.mjs';
-import { freshLog, tail } from './files.mjs';
+import { beginFirstRun, fill } from './filling.mjs';
 import { ensurePackages, packagesAreMissing } from './packages.mjs';
 import { dataFolder, root } from './place.mjs';
 import { loopback, tryPort } from './ports.mjs';
@@ -46,9 +46,7 @@ async function work({ children, folder, given, dev, since, untilEnd, ready }) {
   }
   const startOver = beginFirstRun(folder, given);
   const { env, running } = await startServices(children, folder, { given, startOver });
-  await step('Tables', () => script(children, 'migrate', env));
-  if (env.DEMO === '1') await step('Demo shop', () => script(children, 'seed', env));
-  finishFirstRun(folder);
+  await fill(children, folder, given, env);
   const again = () => startApp(children, folder, env, entry);
   await step(`Serving on port ${port}`, async () => {
     if ((await tryPort(port)) === undefined) throw portTaken(port);
@@ -81,35 +79,6 @@ function checkRoom(folder, given) {
   const needed = first ? roomToInstall : roomToRun;
   needRoom(root, needed);
   return needRoom(folder, needed);
-}
-
-const unfinished = (folder) => `${folder}/first-run-unfinished`;
-
-/**
- * The first run fills an empty database. Until it is done a note says so: found again, it means
- * that the filling was cut off and starts over (nobody can have worked in that shop yet).
- */
-function beginFirstRun(folder, given) {
-  if (broughtAlong(given).database) return false;
-  if (!existsSync(`${folder}/mariadb`)) writeFileSync(unfinished(folder), '');
-  if (!existsSync(unfinished(folder))) return false;
-  for (const name of ['object-store', 'mail-catcher'])
-    rmSync(`${folder}/${name}`, { recursive: true, force: true });
-  return true;
-}
-
-const finishFirstRun = (folder) => rmSync(unfinished(folder), { force: true });
-
-/** Run `src/cli/<name>.ts`. @throws Stop with its last lines */
-async function script(children, name, env) {
-  const log = freshLog(`${children.folder}/logs`, name);
-  const words = ['--import', 'tsx', `${root}/src/cli/${name}.ts`];
-  const code = await children.run(name, process.execPath, words, { cwd: root, log, env });
-  if (code !== 0)
-    throw new Stop(
-      `src/cli/${name}.ts ended with ${code}: the last lines say why. Put that right, then start again.`,
-      tail(log, 25),
-    );
 }
 
 function sayOpen(env, since) {

@@ -28,26 +28,26 @@ export async function startServices(children, folder, { given, startOver, lastin
   for (const name of without) leftOut[name] = true;
   const env = settingsFor({ given, ports, secrets });
   const running = [];
-  const add = (title, where, again) =>
-    step(`${title} on ${where}`, async () => {
-      running.push({ name: title, entry: await again(), again });
-    });
   if (!leftOut.database) {
     await step('Database files', () => makeDatabaseFolder(children, folder));
     let fresh = startOver;
-    await add('MariaDB', `port ${ports.database}`, () => {
+    const again = () => {
       const options = { startOver: fresh, lasting };
       fresh = false;
       return startDatabase(children, folder, ports.database, secrets, options);
+    };
+    await step(`MariaDB on port ${ports.database}`, async () => {
+      running.push({ name: 'MariaDB', entry: await again(), again });
     });
   }
-  if (!leftOut.store)
-    await add('Object store', `port ${ports.store}`, () =>
-      startStore(children, folder, ports, env),
-    );
-  if (!leftOut.mail)
-    await add('Mail catcher', `ports ${ports.smtp} and ${ports.inbox}`, () =>
-      startMailCatcher(children, folder, ports),
-    );
+  const fakes = [
+    ['store', 'Object store', () => startStore(children, folder, ports, env)],
+    ['mail', 'Mail catcher', () => startMailCatcher(children, folder, ports)],
+  ].filter(([name]) => !leftOut[name]);
+  if (fakes.length > 0)
+    await step(fakes.map(([, title]) => title).join(' and '), async () => {
+      const add = async ([, name, again]) => running.push({ name, entry: await again(), again });
+      await Promise.all(fakes.map(add));
+    });
   return { env, ports, running };
 }
