@@ -3,6 +3,7 @@ import { afterEach, expect, test } from 'vitest';
 import { eq } from 'drizzle-orm';
 import { outbox } from '@/db/schema/outbox';
 import { photos } from '@/db/schema/photos';
+import { ticketEvents, ticketNotes } from '@/db/schema/tickets';
 import { startApp } from '../fixtures/app';
 import { openPhotoShop, put, type TestPhotoShop } from '../fixtures/photo-shop';
 import { cameraJpeg } from '../fixtures/pictures';
@@ -23,20 +24,44 @@ async function allThere(shop: TestPhotoShop): Promise<void> {
   }
 }
 
-test('after the app is killed in the middle of uploads, each one announced is ready once or can be announced again', async () => {
+const UPLOADS = 200;
+
+/** Begins all uploads and puts their files, ten at a time. */
+async function putAll(shop: TestPhotoShop): Promise<string[]> {
+  const ids: string[] = [];
+  for (let n = 0; n < UPLOADS; n += 10) {
+    const some = Array.from({ length: 10 }, async (_, i) => {
+      const made = await put(shop, shop.anna.ticket.number, await cameraJpeg(200 + n + i, 120));
+      if ('upload' in made) ids.push(made.upload.photo);
+    });
+    await Promise.all(some);
+  }
+  return ids;
+}
+
+/** Writes notes on a ticket, one after another, until it fails; answers those that were acknowledged. */
+async function writeNotes(shop: TestPhotoShop, writer: number): Promise<string[]> {
+  const acknowledged: string[] = [];
+  const path = `/api/tickets/${shop.bruno.ticket.number}/notes`;
+  for (let n = 0; ; n++) {
+    const body = `note ${writer}.${n}`;
+    const answer = await shop.call('counter', 'POST', path, { json: { body } }).catch(() => null);
+    if (answer?.status !== 201) return acknowledged;
+    acknowledged.push(body);
+  }
+}
+
+test('after the app is killed amid 200 uploads and ticket writes, what was acknowledged is there once and nothing points to nothing', async () => {
   const first = await startApp({ env: { WORKER: '0' } });
   const shop = await openPhotoShop(first);
   closing = [first.stop, shop.close, shop.clearFaults];
-  const ids: string[] = [];
-  for (let n = 0; n < 12; n++) {
-    const made = await put(shop, shop.anna.ticket.number, await cameraJpeg(400 + n, 300));
-    if ('upload' in made) ids.push(made.upload.photo);
-  }
+  const ids = await putAll(shop);
+  expect(ids).toHaveLength(UPLOADS);
   await shop.fault({
     match: { method: 'PUT', key: 'photos/*' },
     kind: 'delay',
-    ms: 250,
-    times: 60,
+    ms: 30,
+    times: 900,
   });
   const answered = new Set<string>();
   const asked = Promise.allSettled(
@@ -45,34 +70,43 @@ test('after the app is killed in the middle of uploads, each one announced is re
       if (answer.status === 200) answered.add(id);
     }),
   );
-  for (const until = Date.now() + 20_000; answered.size < 3 && Date.now() < until;) await pause(20);
+  const writing = Promise.all([1, 2].map((writer) => writeNotes(shop, writer)));
+  for (const until = Date.now() + 60_000; answered.size < 40 && Date.now() < until;) await pause(5);
   await first.kill9();
   await asked;
+  const acknowledged = (await writing).flat();
   await shop.clearFaults();
-  expect(answered.size).toBeGreaterThanOrEqual(3);
-  expect(answered.size).toBeLessThan(12);
+  expect(answered.size).toBeGreaterThanOrEqual(40);
+  expect(answered.size).toBeLessThan(UPLOADS);
+  expect(acknowledged.length).toBeGreaterThan(5);
   const readyIds = async () => {
     const rows = await shop.db.select().from(photos).where(eq(photos.state, 'ready'));
     return rows.map((row) => row.publicId);
   };
-  const ready = await readyIds();
-  for (const id of answered) expect(ready).toContain(id);
+  expect(await readyIds()).toEqual(expect.arrayContaining([...answered]));
   await allThere(shop);
 
   // The promised jobs are due a minute after the request; the test does not wait for it.
-  await shop.db.update(outbox).set({ dueAt: new Date() }).where(eq(outbox.kind, 'photo'));
-  const promised = await shop.db.select().from(outbox).where(eq(outbox.kind, 'photo'));
+  const jobs = eq(outbox.kind, 'photo');
+  await shop.db.update(outbox).set({ dueAt: new Date() }).where(jobs);
+  const promised = (await shop.db.select().from(outbox).where(jobs)).length;
+  expect(promised).toBeGreaterThan(answered.size);
   const second = await startApp({ databaseName: first.databaseName });
   closing.push(second.stop);
-  for (const until = Date.now() + 60_000; Date.now() < until; await pause(200))
-    if ((await readyIds()).length >= promised.length) break;
-  expect((await readyIds()).length).toBeGreaterThanOrEqual(promised.length);
+  for (const until = Date.now() + 90_000; Date.now() < until; await pause(200))
+    if ((await readyIds()).length >= promised) break;
+  expect((await readyIds()).length).toBeGreaterThanOrEqual(promised);
   await allThere(shop);
+
+  const headers = { cookie: shop.cookies.technician };
   for (const id of ids) {
     const path = `${second.origin}/api/photos/${id}`;
-    const headers = { cookie: shop.cookies.technician };
     expect((await fetch(`${path}/done`, { method: 'POST', headers })).status).toBe(200);
-    expect((await fetch(`${path}/full`, { headers })).status).toBe(200);
+    expect((await fetch(`${path}/thumb`, { headers })).status).toBe(200);
   }
   expect((await readyIds()).sort()).toEqual([...ids].sort());
+  const events = await shop.db.select().from(ticketEvents).where(eq(ticketEvents.kind, 'photo'));
+  expect(events).toHaveLength(UPLOADS);
+  const notes = (await shop.db.select().from(ticketNotes)).map(({ body }) => body);
+  for (const body of acknowledged) expect(notes.filter((note) => note === body)).toHaveLength(1);
 });
