@@ -21,8 +21,9 @@ export function posteriorOf(workshop: Workshop): Posterior {
     hypotheses.push({ j, k: -1, log: Math.log(priors.odds[j]!) + singles.joint[j]! }),
   );
   const least = Math.max(...hypotheses.map((h) => h.log));
-  hypotheses.push(...rankPairs(workshop, singles, least));
-  return { workshop, hypotheses, probability: normalised(hypotheses) };
+  // Hundreds of parts make more pairs than a call takes arguments.
+  const all = hypotheses.concat(rankPairs(workshop, singles, least));
+  return { workshop, hypotheses: all, probability: normalised(all) };
 }
 
 function normalised(hypotheses: readonly Hypothesis[]): Float64Array {

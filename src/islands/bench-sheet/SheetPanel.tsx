@@ -1,8 +1,9 @@
 import type { Suspects } from '@/contracts/bench';
+import { MAX_READINGS } from '@/contracts/compute';
 import type { Board, Phase } from './panel-props';
 import { isStruck, type Row } from './rows';
 import { SheetGrid } from './SheetGrid';
-import { MOST_READINGS, type Sheets, type SheetStore } from './sheet-store';
+import type { Sheets, SheetStore } from './sheet-store';
 
 export const PHASE_NAMES: Readonly<Record<Phase, string>> = {
   'as-found': 'As found',
@@ -34,7 +35,7 @@ export function SheetPanel({
   told: Suspects | null;
   pointed: string | null;
 }) {
-  const full = sheets[phase].filter((row) => !isStruck(row)).length >= MOST_READINGS;
+  const full = sheets[phase].filter((row) => !isStruck(row)).length >= MAX_READINGS;
   const empty = sheets[phase].length === 0;
   return (
     <section className="sheet bench-sheet" aria-labelledby="bench-title" id="bench">
@@ -85,7 +86,7 @@ export function SheetPanel({
       {editable && (
         <p className="sheet-foot bench-keys">
           {full ? (
-            `The sheet holds ${MOST_READINGS} readings: strike one to enter another.`
+            `The sheet holds ${MAX_READINGS} readings: strike one to enter another.`
           ) : (
             <>
               <span>

@@ -1,5 +1,6 @@
 /** The rows of both phases and their saving. Outside React, so that saves go on whatever is drawn. */
 import type { BenchReading } from '@/contracts/bench';
+import { MAX_READINGS } from '@/contracts/compute';
 import { named } from './completion';
 import type { Board, Phase } from './panel-props';
 import type { Pasted } from './pasted';
@@ -25,9 +26,6 @@ export type Snapshot = { sheets: Sheets; saves: Readonly<Record<Phase, number>> 
 
 export type SheetStore = ReturnType<typeof openSheet>;
 
-/** Readings a phase holds at most, as the server has it. */
-export const MOST_READINGS = 60;
-
 type Options = {
   ticketNumber: string;
   board: Board;
@@ -52,7 +50,7 @@ export function openSheet(options: Options) {
 
   /** There is always one empty row at the end to type into, until the sheet is full. */
   function withEntry(rows: readonly Row[]): readonly Row[] {
-    if (!editable || rows.filter((r) => !isStruck(r)).length >= MOST_READINGS) return rows;
+    if (!editable || rows.filter((r) => !isStruck(r)).length >= MAX_READINGS) return rows;
     const last = rows.findLast((row) => !isStruck(row));
     return last && isBlank(last) && !last.offered ? rows : [...rows, entryAfter(rows, newKey())];
   }

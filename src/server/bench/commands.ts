@@ -1,9 +1,10 @@
 /** Writing the bench sheet. Readings are kept as typed, with what the parser made of them. */
-import { and, count, eq } from 'drizzle-orm';
-import { inTransaction, isDuplicate, type Database, type Queryable } from '@/db/client';
-import { users } from '@/db/schema/people';
-import { readings } from '@/db/schema/tickets';
+import { and, count, eq, ne, type SQL } from 'drizzle-orm';
 import type { EditReading, NewReading } from '@/contracts/bench';
+import { MAX_READINGS } from '@/contracts/compute';
+import { inTransaction, type Database, type Queryable } from '@/db/client';
+import { users } from '@/db/schema/people';
+import { readings, tickets } from '@/db/schema/tickets';
 import { parseResistance } from '@/domain/quantities/parse';
 import { isClosed } from '@/domain/tickets/stages';
 import { CAUTION_CODES } from '@/domain/tickets/vocabulary';
@@ -13,17 +14,52 @@ import { cautionsOf } from '../tickets/queries';
 import type { TicketHead } from '../tickets/types';
 import { asBenchReading } from './queries';
 
-const MOST_READINGS = 60;
 type Written = ReturnType<typeof asBenchReading>;
 
+/**
+ * Locks the ticket's row until the transaction ends, so that the sheet of a ticket that is just being closed, or is
+ * just full, does not change. Refuses a closed ticket.
+ */
+async function lockOpen(tx: Queryable, { id }: TicketHead): Promise<Refusal | null> {
+  const [now] = await tx
+    .select({ stage: tickets.stage })
+    .from(tickets)
+    .where(eq(tickets.id, id))
+    .for('update');
+  if (!now) return absent('ticket');
+  return isClosed(now.stage)
+    ? refuse('conflict', 'The ticket is closed: its bench sheet stays as it is.')
+    : null;
+}
+
 /** Readings wait for the cautions, and stop when the ticket is closed. */
-async function sheetRefusal(db: Queryable, ticket: TicketHead): Promise<Refusal | null> {
-  if (isClosed(ticket.stage))
-    return refuse('conflict', 'The ticket is closed: its bench sheet stays as it is.');
-  const ticked = await cautionsOf(db, ticket.id);
+async function sheetRefusal(tx: Queryable, ticket: TicketHead): Promise<Refusal | null> {
+  const closed = await lockOpen(tx, ticket);
+  if (closed) return closed;
+  const ticked = await cautionsOf(tx, ticket.id);
   return ticked.length < CAUTION_CODES.length
     ? refuse('conflict', 'The cautions are not all ticked: tick them first, then enter readings.')
     : null;
+}
+
+/** A phase holds so many readings; `except` is the one being moved into it. */
+async function fullRefusal(
+  tx: Queryable,
+  ticketId: number,
+  phase: EditReading['phase'],
+  except = 0,
+): Promise<Refusal | null> {
+  const [held] = await tx
+    .select({ n: count() })
+    .from(readings)
+    .where(
+      and(eq(readings.ticketId, ticketId), eq(readings.phase, phase), ne(readings.id, except)),
+    );
+  return (held?.n ?? 0) < MAX_READINGS
+    ? null
+    : refuse('too-large', `The sheet holds ${MAX_READINGS} readings: strike one first.`, {
+        errors: [{ path: 'readings', message: `${MAX_READINGS} held, no more are taken` }],
+      });
 }
 
 type Where = Pick<EditReading, 'from' | 'to' | 'part' | 'typed'>;
@@ -68,41 +104,28 @@ export async function enterReading(
   input: NewReading,
   now: Date,
 ): Promise<Outcome<Written>> {
-  const refusal = await sheetRefusal(db, ticket);
-  if (refusal) return refusal;
   const value = parsed(input);
-  if (!value.ok) return value;
-  const byKey = and(eq(readings.ticketId, ticket.id), eq(readings.clientKey, input.clientKey));
-  try {
-    return await inTransaction(db, async (tx): Promise<Outcome<Written>> => {
-      const [held] = await tx
-        .select({ n: count() })
-        .from(readings)
-        .where(and(eq(readings.ticketId, ticket.id), eq(readings.phase, input.phase)));
-      if ((held?.n ?? 0) >= MOST_READINGS)
-        return refuse('too-large', `The sheet holds ${MOST_READINGS} readings: strike one first.`);
-      await tx.insert(readings).values({
-        ticketId: ticket.id,
-        clientKey: input.clientKey,
-        ...columnsOf(input),
-        ...value.value,
-        createdBy: actor.id,
-        createdAt: now,
-      });
-      const [row] = await tx.select().from(readings).where(byKey);
-      if (!row) throw new Error('The reading was not written.');
-      return done(asBenchReading(row, actor.name));
+  return inTransaction(db, async (tx): Promise<Outcome<Written>> => {
+    const refusal = await sheetRefusal(tx, ticket);
+    if (refusal) return refusal;
+    const entered = () => readingWhere(tx, ticket.id, eq(readings.clientKey, input.clientKey));
+    const before = await entered();
+    if (before) return done(before);
+    if (!value.ok) return value;
+    const full = await fullRefusal(tx, ticket.id, input.phase);
+    if (full) return full;
+    await tx.insert(readings).values({
+      ticketId: ticket.id,
+      clientKey: input.clientKey,
+      ...columnsOf(input),
+      ...value.value,
+      createdBy: actor.id,
+      createdAt: now,
     });
-  } catch (error) {
-    if (!isDuplicate(error)) throw error;
-    const [row] = await db
-      .select({ reading: readings, by: users.name })
-      .from(readings)
-      .innerJoin(users, eq(users.id, readings.createdBy))
-      .where(byKey);
-    if (!row) throw error;
-    return done(asBenchReading(row.reading, row.by));
-  }
+    const written = await entered();
+    if (!written) throw new Error('The reading was not written.');
+    return done(written);
+  });
 }
 
 const stale = (current: Written) =>
@@ -110,12 +133,12 @@ const stale = (current: Written) =>
     more: { current },
   });
 
-async function readingOf(db: Queryable, ticketId: number, id: number) {
+async function readingWhere(db: Queryable, ticketId: number, which: SQL) {
   const [row] = await db
     .select({ reading: readings, by: users.name })
     .from(readings)
     .innerJoin(users, eq(users.id, readings.createdBy))
-    .where(and(eq(readings.id, id), eq(readings.ticketId, ticketId)));
+    .where(and(eq(readings.ticketId, ticketId), which));
   return row ? asBenchReading(row.reading, row.by) : null;
 }
 
@@ -128,19 +151,23 @@ export async function correctReading(
   version: number,
   input: EditReading,
 ): Promise<Outcome<Written>> {
-  const refusal = await sheetRefusal(db, ticket);
-  if (refusal) return refusal;
   const value = parsed(input);
-  if (!value.ok) return value;
-  const [changed] = await db
-    .update(readings)
-    .set({ ...columnsOf(input), ...value.value, version: version + 1 })
-    .where(
-      and(eq(readings.id, id), eq(readings.ticketId, ticket.id), eq(readings.version, version)),
-    );
-  const current = await readingOf(db, ticket.id, id);
-  if (!current) return absent('reading');
-  return changed.affectedRows === 1 ? done(current) : stale(current);
+  return inTransaction(db, async (tx): Promise<Outcome<Written>> => {
+    const refusal = await sheetRefusal(tx, ticket);
+    if (refusal) return refusal;
+    if (!value.ok) return value;
+    const full = await fullRefusal(tx, ticket.id, input.phase, id);
+    if (full) return full;
+    const [changed] = await tx
+      .update(readings)
+      .set({ ...columnsOf(input), ...value.value, version: version + 1 })
+      .where(
+        and(eq(readings.id, id), eq(readings.ticketId, ticket.id), eq(readings.version, version)),
+      );
+    const current = await readingWhere(tx, ticket.id, eq(readings.id, id));
+    if (!current) return absent('reading');
+    return changed.affectedRows === 1 ? done(current) : stale(current);
+  });
 }
 
 /** Strikes a reading. */
@@ -151,14 +178,16 @@ export async function strikeReading(
   id: number,
   version: number,
 ): Promise<Outcome<null>> {
-  if (isClosed(ticket.stage))
-    return refuse('conflict', 'The ticket is closed: its bench sheet stays as it is.');
-  const [changed] = await db
-    .delete(readings)
-    .where(
-      and(eq(readings.id, id), eq(readings.ticketId, ticket.id), eq(readings.version, version)),
-    );
-  if (changed.affectedRows === 1) return done(null);
-  const current = await readingOf(db, ticket.id, id);
-  return current ? stale(current) : absent('reading');
+  return inTransaction(db, async (tx): Promise<Outcome<null>> => {
+    const closed = await lockOpen(tx, ticket);
+    if (closed) return closed;
+    const [changed] = await tx
+      .delete(readings)
+      .where(
+        and(eq(readings.id, id), eq(readings.ticketId, ticket.id), eq(readings.version, version)),
+      );
+    if (changed.affectedRows === 1) return done(null);
+    const current = await readingWhere(tx, ticket.id, eq(readings.id, id));
+    return current ? stale(current) : absent('reading');
+  });
 }

@@ -77,9 +77,13 @@ function readVersion(route: Route, request: Request): Outcome<number> {
     : refuse('version-needed', 'If-Match is missing or not a version: send the ETag you read.');
 }
 
+/** Judges a body before its schema does, where one answer has to name more than a schema can see. */
+type BodyRefusal = (raw: unknown) => Refusal | null;
+
 async function answer(
   route: Route,
   context: APIContext,
+  bodyRefusal: BodyRefusal | undefined,
 ): Promise<Response | { call: Call<Route> }> {
   const { actor: who, requestId, log, address, sessionCookie } = context.locals;
   const allowed = authorise(route, who);
@@ -96,6 +100,8 @@ async function answer(
   if (route.body) {
     const raw = await readJson(context.request, route.bodyLimit ?? 262_144);
     if (!raw.ok) return problemResponse(raw);
+    const refused = bodyRefusal?.(raw.value);
+    if (refused) return problemResponse(refused);
     const parsed = parse(route.body, raw.value, 'invalid');
     if (!parsed.ok) return problemResponse(parsed);
     body = parsed.value;
@@ -127,9 +133,13 @@ function toResponse(route: Route, value: Answer<Route>): Response {
 }
 
 /** The endpoint of a route. */
-export function serve<R extends Route>(route: R, handler: Handler<R>): APIRoute {
+export function serve<R extends Route>(
+  route: R,
+  handler: Handler<R>,
+  bodyRefusal?: BodyRefusal,
+): APIRoute {
   return async (context) => {
-    const ready = await answer(route, context);
+    const ready = await answer(route, context, bodyRefusal);
     if (ready instanceof Response) return ready;
     const { call } = ready;
     const key = route.repeatable ? call.request.headers.get('idempotency-key') : null;

@@ -32,11 +32,12 @@ export function crashResponse(requestId: string): Response {
   });
 }
 
-/** zod's issues as fields with paths like `parts[3].nets[0]`. */
+/** zod's issues as fields with paths like `parts[3].nets[0]`, `most` of them. */
 export function fieldErrors(
   issues: readonly { path: PropertyKey[]; message: string }[],
+  most = 50,
 ): FieldError[] {
-  return issues.slice(0, 50).map((issue) => ({
+  return issues.slice(0, most).map((issue) => ({
     path: issue.path
       .map((p, i) => (typeof p === 'number' ? `[${p}]` : i === 0 ? String(p) : `.${String(p)}`))
       .join(''),
