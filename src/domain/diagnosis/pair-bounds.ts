@@ -15,6 +15,8 @@ export interface PairBounds {
   apart(j: number, k: number): boolean;
   /** ln likelihood bound of modes j and k, giving up once it falls below `least`. */
   bound(j: number, k: number, least: number): number;
+  /** True when the pair bounded last moves no reading that depends on both: gains add up here as well. */
+  still(): boolean;
 }
 
 export function pairBounds(scene: Scene, evidence: Evidence, reach: Reach): PairBounds {
@@ -33,6 +35,7 @@ export function pairBounds(scene: Scene, evidence: Evidence, reach: Reach): Pair
   const k22 = new Float64Array(settings * 2);
   const ready = new Uint8Array(settings);
 
+  let unmoved = false;
   const together = (s: number, j: number, k: number): void => {
     const z = scene.settings[s]!.between[scene.modes[j]!.part * row + scene.modes[k]!.part]!;
     for (let end = 0; end < 2; end++) {
@@ -54,6 +57,7 @@ export function pairBounds(scene: Scene, evidence: Evidence, reach: Reach): Pair
     const aloneJ = alone[j]!;
     const aloneK = alone[k]!;
     let sum = total + gain[j]! + gain[k]!;
+    unmoved = true;
     for (let word = 0; word < 2; word++)
       for (let bits = both[word]!; bits !== 0; bits &= bits - 1) {
         const r = 31 - Math.clz32(bits & -bits) + 30 * word;
@@ -81,6 +85,7 @@ export function pairBounds(scene: Scene, evidence: Evidence, reach: Reach): Pair
         const high = base - (k11[at + 1]! * jj + k12[at + 1]! * jk + k22[at + 1]! * kk);
         sum += weigh.between(r, low, high) - weigh.inside[r]!;
         if (sum < least) return sum;
+        if (unmoved && weigh.moves(r, low, high, base)) unmoved = false;
       }
     return sum;
   };
@@ -94,6 +99,7 @@ export function pairBounds(scene: Scene, evidence: Evidence, reach: Reach): Pair
       reachBoth(scene, reach, j, k, both);
       return bound(j, k, least);
     },
+    still: () => unmoved,
   };
 }
 
@@ -148,10 +154,15 @@ interface Weigher {
   readonly inside: Float64Array;
   /** ln weight when it may show anything from low to high, Ω. */
   between(r: number, low: number, high: number): number;
+  /** True when the meter could notice anything from low to high beside the healthy resistance, Ω. */
+  moves(r: number, low: number, high: number, healthy: number): boolean;
 }
 
+/** Shares of the meter's standard deviation that nobody notices. */
+const UNNOTICED = 0.1;
+
 function weigher(evidence: Evidence): Weigher {
-  const { over, y, floor, variance, logMisprobe } = evidence;
+  const { over, y, floor, variance, deviation, logMisprobe } = evidence;
   const value = y.map((one, r) => Math.exp(one) - floor[r]!);
   const inside = variance.map((one, r) =>
     over[r] === 1 ? 0 : -0.5 * Math.log(one) - LOG_ROOT_TAU,
@@ -170,5 +181,11 @@ function weigher(evidence: Evidence): Weigher {
     if (high < value[r]!) return outside(r, high);
     return over[r] === 0 && low > value[r]! ? outside(r, low) : inside[r]!;
   };
-  return { inside, between };
+  const moves = (r: number, low: number, high: number, healthy: number): boolean => {
+    if (healthy === Infinity) return low !== Infinity;
+    if (over[r] === 1 && low > 2 * value[r]! && healthy > 2 * value[r]!) return false;
+    const step = UNNOTICED * deviation[r]! * (healthy + floor[r]!);
+    return high - healthy > step || healthy - low > step;
+  };
+  return { inside, between, moves };
 }

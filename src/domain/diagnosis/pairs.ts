@@ -54,7 +54,10 @@ export function rankPairs(workshop: Workshop, singles: Singles, best: number): H
         continue;
       }
       const log = prior + bounds.bound(j, k, best - HOPELESS - prior);
-      if (log > best - HOPELESS) candidates.push({ j, k, prior, log });
+      if (log <= best - HOPELESS) continue;
+      if (bounds.still())
+        found.push({ j, k, log: prior + singles.healthy + singles.gain[j]! + singles.gain[k]! });
+      else candidates.push({ j, k, prior, log });
     }
   }
   candidates.sort((a, b) => b.log - a.log).splice(MOST_SCREENED);
