@@ -43,21 +43,21 @@ test('a MariaDB that will not start is shown with its last words, and nothing st
 test('a start cut off in the first filling is recovered by the next one', async () => {
   const folder = dataFolder();
   const port = await freePort();
-  const first = start(folder, { PORT: port });
+  const first = start(folder, { PORT: port, DEMO: '0' });
   await first.until('Tables');
   first.kill('SIGKILL');
   await first.exit;
   const left = processesOn(folder);
   expect(left.length).toBeGreaterThan(2);
 
-  const second = start(folder, { PORT: port });
+  const second = start(folder, { PORT: port, DEMO: '0' });
   await second.until('The shop is open');
   expect(second.printed()).toContain('An earlier run was cut off; ended what it left:');
   const still = processesOn(folder);
   expect(left.filter((pid) => still.includes(pid))).toEqual([]);
   expect((await fetch(`http://127.0.0.1:${port}/`)).status).toBe(200);
 
-  const third = start(folder, { PORT: port });
+  const third = start(folder, { PORT: port, DEMO: '0' });
   expect(await third.exit).toBe(1);
   expect(third.printed()).toContain('Meterwright is already running here');
   expect((await fetch(`http://127.0.0.1:${port}/`)).status).toBe(200);
