@@ -30,6 +30,20 @@ function reached({ resistors, from }: SpiceProbe): Set<string> {
 }
 
 /**
+ * A resistor as ngspice keeps its digits: a low one through its current (a sense source and a voltage R·i),
+ * because its conductance would swallow that of the gigohms beside it on the matrix's diagonal.
+ */
+function element(name: string, ends: string, ohms: number): string[] {
+  if (ohms === 0) return [`V${name} ${ends} 0`];
+  if (ohms > LOW) return [`R${name} ${ends} ${ohms}`];
+  const [a, b] = ends.split(' ');
+  return [`V${name} ${a} s${name} 0`, `H${name} s${name} ${b} V${name} ${ohms}`];
+}
+
+/** Ω */
+const LOW = 1000;
+
+/**
  * Resistances by ngspice, all probes in one run: each is a copy of its circuit with its own net names, driven
  * with 1 A into a grounded far end. Nets that nothing joins read Infinity without asking.
  */
@@ -44,7 +58,7 @@ export function spiceOhms(probes: readonly SpiceProbe[]): number[] {
     probe.resistors.forEach(({ a, b, ohms }, at) => {
       if (!joined.has(a)) return;
       const ends = `${name(a)} ${name(b)}`;
-      lines.push(ohms === 0 ? `V${index}_${at} ${ends} 0` : `R${index}_${at} ${ends} ${ohms}`);
+      lines.push(...element(`${index}_${at}`, ends, ohms));
     });
     lines.push(`I${index} 0 ${name(probe.from)} 1`);
   });
