@@ -2,8 +2,8 @@ import type { Suspects } from '@/contracts/bench';
 import { modeLabels } from '@/domain/parts/words';
 import { PartSymbol, type PartState } from '../shared/PartSymbol';
 import { ProbabilityScale } from '../shared/ProbabilityScale';
+import { pointing } from '../shared/pointing';
 import { glued } from './glued';
-import { pointing } from './pointing';
 
 type Verdict = Suspects['alone'][number];
 

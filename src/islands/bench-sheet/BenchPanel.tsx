@@ -18,11 +18,13 @@
  * - A reading with two meanings (1,600) stays open on Enter; Tab reaches the buttons that settle it.
  */
 import { useEffect, useMemo, useState, useSyncExternalStore } from 'react';
+import { usePointed } from '../shared/pointing';
+import { tellStandings } from '../shared/standings';
 import type { BenchPanelProps, Phase } from './panel-props';
-import { usePointed } from './pointing';
 import { newClientKey } from './client-key';
 import { openSheet } from './sheet-store';
 import { SheetPanel } from './SheetPanel';
+import { standingsOf } from './standings-of';
 import { SuspectsPanel } from './SuspectsPanel';
 import { useSuspects } from './use-suspects';
 
@@ -49,6 +51,7 @@ export function BenchPanel(props: BenchPanelProps) {
   const first = { 'as-found': suspects.asFound, 'after-repair': suspects.afterRepair };
   const { told, failed, again } = useSuspects(ticketNumber, first, phase, saves[phase]);
   const pointed = usePointed();
+  useEffect(() => tellStandings(standingsOf(told)), [told]);
 
   useEffect(() => {
     const warn = (event: BeforeUnloadEvent) => store.unsaved() && event.preventDefault();

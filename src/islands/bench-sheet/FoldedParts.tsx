@@ -1,8 +1,8 @@
 import { PartSymbol } from '../shared/PartSymbol';
+import { pointing } from '../shared/pointing';
 import { writeProbability } from '../shared/ProbabilityScale';
 import type { BoardPart } from './panel-props';
 import { glued } from './glued';
-import { pointing } from './pointing';
 import type { Standing } from './suspect-order';
 
 /** Parts of one standing behind their count. */

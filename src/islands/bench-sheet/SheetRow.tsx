@@ -1,13 +1,14 @@
 import { useId } from 'react';
 import { writeExpected, type Outlook } from '@/domain/bench/expected';
 import { parseResistance } from '@/domain/quantities/parse';
+import { pointing } from '../shared/pointing';
 import { ReadingScale } from '../shared/ReadingScale';
 import { planReading } from '../shared/scale-geometry';
 import { Aligned } from './Aligned';
 import { FieldCell } from './FieldCell';
 import { COLUMNS, type Column } from './moves';
 import type { BenchPanelProps, Phase } from './panel-props';
-import { partOf, pointing } from './pointing';
+import { partOf } from './part-of-row';
 import { FIELDS, missingOf, pointsOf, type Field, type Row } from './rows';
 import { noteOf, RowNote } from './RowNote';
 import type { SheetStore } from './sheet-store';

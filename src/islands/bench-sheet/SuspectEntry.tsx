@@ -1,9 +1,9 @@
 import { modeWords } from '@/domain/bench/sentences';
 import { PartSymbol } from '../shared/PartSymbol';
+import { pointing } from '../shared/pointing';
 import { ProbabilityScale } from '../shared/ProbabilityScale';
 import type { BoardPart } from './panel-props';
 import { glued } from './glued';
-import { pointing } from './pointing';
 import type { Standing } from './suspect-order';
 
 /** One suspect: its symbol as it failed, why, and how likely it is. */

@@ -11,8 +11,8 @@ export function pointAt(ref: string | null): void {
   window.dispatchEvent(new CustomEvent(EVENT, { detail: { ref } }));
 }
 
-/** Handlers for whatever stands for a part. */
-export const pointing = (ref: string) => ({
+/** Handlers for whatever stands for a part; null where it stands for none. */
+export const pointing = (ref: string | null) => ({
   onPointerEnter: () => pointAt(ref),
   onPointerLeave: () => pointAt(null),
   onFocus: () => pointAt(ref),
