@@ -29,9 +29,9 @@ export const everyPart = [
   check('types', bin('astro/astro.js'), 'check', '--minimumSeverity', 'warning'),
   project('unit', 8, {}),
   project('reference', 12, { programs: ['ngspice'] }),
-  project('api', 12, { services: true, app: true }),
-  project('faults', 12, { services: true, app: true }),
-  project('e2e', 15, { services: true, app: true, programs: ['chromium'] }),
+  project('api', 20, { services: true, app: true }),
+  project('faults', 15, { services: true, app: true }),
+  project('e2e', 20, { services: true, app: true, programs: ['chromium'] }),
 ];
 
 export const output = `${root}/tests/.output`;
