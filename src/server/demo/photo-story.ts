@@ -74,8 +74,9 @@ async function benchTickets(db: Queryable): Promise<Row[]> {
   return [...found.values()];
 }
 
-function picturesOf(row: Row, story: Pick<Story, 'faults'>, shared: boolean): Picture[] {
+function picturesOf(row: Row, story: Pick<Story, 'faults' | 'wear'>, shared: boolean): Picture[] {
   const refs = story.faults.map(({ ref }) => ref).join(' and ');
+  const cleaned = [...story.wear.values()].includes('dull');
   const later = (from: Date, minutes: number) => new Date(from.getTime() + minutes * MINUTE);
   const before: Picture[] = [
     {
@@ -100,7 +101,9 @@ function picturesOf(row: Row, story: Pick<Story, 'faults'>, shared: boolean): Pi
     {
       phase: 'after',
       close: true,
-      caption: `${refs} replaced, flux not yet washed off.`,
+      caption: cleaned
+        ? `${refs} cleaned and adjusted.`
+        : `${refs} replaced by new parts of the same ratings.`,
       shared,
       at: done,
     },
@@ -134,7 +137,7 @@ export async function photoStories(
       const part = board.parts.find((p) => p.ref === ref);
       if (part) wear.set(ref, wearOf(part.kind, ohms));
     }
-    const pictures = picturesOf(row, { faults }, stories.length % 2 === 0);
+    const pictures = picturesOf(row, { faults, wear }, stories.length % 2 === 0);
     stories.push({ number: row.number, board, faults, wear, pictures });
   }
   return stories;

@@ -159,7 +159,7 @@ export const eventsOf = (db: Queryable, ticketId: number) =>
     .select()
     .from(ticketEvents)
     .where(eq(ticketEvents.ticketId, ticketId))
-    .orderBy(asc(ticketEvents.id));
+    .orderBy(asc(ticketEvents.at), asc(ticketEvents.id));
 
 export const cautionsOf = (db: Queryable, ticketId: number) =>
   db

@@ -68,7 +68,7 @@ export async function benchTop(
   const above = (seed * 6007) % (HEIGHT - h);
   return sharp(sheetOf(top), { raw: { width: WIDTH, height: HEIGHT, channels: 3 } })
     .extract({ left, top: above, width: w, height: h })
-    .resize(width, height, { kernel: 'cubic', fit: 'fill' })
+    .resize(width, height, { kernel: 'linear', fit: 'fill' })
     .raw()
     .toBuffer();
 }

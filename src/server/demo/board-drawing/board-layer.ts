@@ -3,7 +3,7 @@ import { num, polyline, type Point } from './geometry';
 import { circle, ellipse, line, path, rect } from './bodies/brush';
 import { copperOf, padShape, stitches } from './copper';
 import type { Face } from './face';
-import type { Floor } from './floors';
+import type { Floor } from './floors/floor';
 import { goldOf } from './gold';
 import { lit, mixed, type Paints } from './paint';
 import { silkOf } from './silk';

@@ -2,7 +2,7 @@
 import { at, num, polyline, toSegment, type Box } from './geometry';
 import { circle, line, path, rect } from './bodies/brush';
 import type { Face } from './face';
-import type { Floor } from './floors';
+import type { Floor } from './floors/floor';
 import type { PlacedPad } from './footprint';
 import type { Paints } from './paint';
 import { roomOn } from './room';

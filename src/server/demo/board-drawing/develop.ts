@@ -29,40 +29,68 @@ export type Light = {
   seed: number;
 };
 
-/** Stray light lifts the blacks, the whites roll off. */
-function toned(level: number): number {
+/** Light changes slowly over the picture: it is worked out for squares of this many pixels. */
+const SQUARE = 8;
+
+/** Stray light lifts the blacks, the whites roll off: levels of a linear scale to those of the file. */
+const TONES = Uint8Array.from({ length: 1024 }, (_, level) => {
   const lifted = 7 + level * 0.965;
-  if (lifted <= 0) return 0;
   return lifted < 205 ? lifted : 205 + 50 * (1 - Math.exp((205 - lifted) / 50));
+});
+const toned = (level: number): number =>
+  TONES[level < 0 ? 0 : level > 1023 ? 1023 : level | 0] ?? 0;
+
+/** How near each square is to the lamp's reflection, how cloudy the mask is there, how much light the lens lets in. */
+function lightOver({ width, height }: Layers, { glare, seed }: Light) {
+  const columns = Math.ceil(width / SQUARE);
+  const rows = Math.ceil(height / SQUARE);
+  const noise = sheetFrom(seed);
+  const near = new Float32Array(columns * rows);
+  const cloud = new Float32Array(columns * rows);
+  const fall = new Float32Array(columns * rows);
+  for (let row = 0; row < rows; row++)
+    for (let column = 0; column < columns; column++) {
+      const [x, y] = [(column + 0.5) * SQUARE, (row + 0.5) * SQUARE];
+      const gu = x / width - glare.x;
+      const gv = ((y / height - glare.y) * height) / width;
+      const [u, v] = [x / width - 0.5, y / height - 0.5];
+      const i = row * columns + column;
+      near[i] = Math.exp(-(gu * gu * 9 + gv * gv * 16));
+      cloud[i] = 1 + noise(x * 0.011, y * 0.011) * 0.03;
+      fall[i] = 1.03 - (u * u + v * v) * 0.52;
+    }
+  return { columns, near, cloud, fall };
 }
 
 /** RGB pixels of the finished photograph. */
-export function developed(layers: Layers, { glare, balance, seed }: Light): Buffer {
+export function developed(layers: Layers, light: Light): Buffer {
   const { width, height, bench, board, bodies, relief, cast, contact, under } = layers;
+  const { columns, near, cloud, fall } = lightOver(layers, light);
   const out = Buffer.allocUnsafe(width * height * 3);
-  const noise = sheetFrom(seed);
-  const grain = grainFrom(seed + 1);
-  const [kr, kg, kb] = balance;
-  let roll = (seed * 2654435761) >>> 0;
+  const grain = grainFrom(light.seed + 1);
+  const [kr, kg, kb] = light.balance;
+  const strength = light.glare.strength;
+  let roll = (light.seed * 2654435761) >>> 0;
   for (let y = 0; y < height; y++) {
-    const v = (y + 0.5) / height - 0.5;
-    const gv = ((y / height - glare.y) * height) / width;
     roll = (Math.imul(roll, 1664525) + 1013904223) >>> 0;
     let g0 = roll >>> 16;
-    const low = (y > 0 ? y - 1 : y) * width;
-    const high = (y < height - 1 ? y + 1 : y) * width;
+    const above = (y > 0 ? y - 1 : y) * width;
+    const below = (y < height - 1 ? y + 1 : y) * width;
+    const squares = ((y / SQUARE) | 0) * columns;
     for (let x = 0; x < width; x++) {
       const i = y * width + x;
       const i3 = i * 3;
       const i4 = i * 4;
-      const u = (x + 0.5) / width - 0.5;
-      const gu = x / width - glare.x;
+      const square = squares + ((x / SQUARE) | 0);
+      g0 = (g0 + 1) & 0xffff;
+      const speck = grain[g0] ?? 0;
+      const tint = (grain[(g0 + 21013) & 0xffff] ?? 0) * 0.03;
       const a = board[i4 + 3] ?? 0;
       let r = 0;
       let g = 0;
       let b = 0;
       if (a < 255) {
-        const dark = 1 - ((under[i] ?? 0) / 255) * 0.72;
+        const dark = 1 - (under[i] ?? 0) * 0.00282;
         r = (bench[i3] ?? 0) * dark;
         g = (bench[i3 + 1] ?? 0) * dark;
         b = (bench[i3 + 2] ?? 0) * dark;
@@ -70,38 +98,32 @@ export function developed(layers: Layers, { glare, balance, seed }: Light): Buff
       if (a > 0) {
         // Light from the upper left: what rises towards it is bright, what falls away is dark.
         const slope =
-          (relief[high + (x < width - 1 ? x + 1 : x)] ?? 0) -
-          (relief[low + (x > 0 ? x - 1 : x)] ?? 0);
-        const near = Math.exp(-(gu * gu * 9 + gv * gv * 16));
-        const cloud = noise(x * 0.011, y * 0.011) * 0.025 + noise(x * 0.5, y * 0.5) * 0.02;
-        const k = 1 + slope * (0.0016 + near * 0.0022) + cloud;
-        const shine = glare.strength * near * (255 + slope * 0.9);
+          (relief[below + (x < width - 1 ? x + 1 : x)] ?? 0) -
+          (relief[above + (x > 0 ? x - 1 : x)] ?? 0);
+        const shone = near[square] ?? 0;
+        const k = (cloud[square] ?? 1) + slope * (0.0016 + shone * 0.0022) + tint * 0.006;
+        const shine = strength * shone * (255 + slope * 0.9);
         const share = a / 255;
-        r = r * (1 - share) + ((board[i4] ?? 0) * k + shine) * share;
-        g = g * (1 - share) + ((board[i4 + 1] ?? 0) * k + shine) * share;
-        b = b * (1 - share) + ((board[i4 + 2] ?? 0) * k + shine * 1.03) * share;
+        r += ((board[i4] ?? 0) * k + shine - r) * share;
+        g += ((board[i4 + 1] ?? 0) * k + shine - g) * share;
+        b += ((board[i4 + 2] ?? 0) * k + shine * 1.03 - b) * share;
       }
-      const shade = (1 - ((cast[i] ?? 0) / 255) * 0.62) * (1 - ((contact[i] ?? 0) / 255) * 0.5);
+      const shade = (1 - (cast[i] ?? 0) * 0.00243) * (1 - (contact[i] ?? 0) * 0.00196);
       r *= shade;
       g *= shade;
       b *= shade;
       const c = bodies[i4 + 3] ?? 0;
       if (c > 0) {
         const share = c / 255;
-        r = r * (1 - share) + (bodies[i4] ?? 0) * share;
-        g = g * (1 - share) + (bodies[i4 + 1] ?? 0) * share;
-        b = b * (1 - share) + (bodies[i4 + 2] ?? 0) * share;
+        r += ((bodies[i4] ?? 0) - r) * share;
+        g += ((bodies[i4 + 1] ?? 0) - g) * share;
+        b += ((bodies[i4 + 2] ?? 0) - b) * share;
       }
-      const fall = 1.03 - (u * u + v * v) * 0.52;
-      g0 = (g0 + 1) & 0xffff;
-      const luma = (grain[g0] ?? 0) * 0.055;
-      const tint = (grain[(g0 + 21013) & 0xffff] ?? 0) * 0.03;
-      r = r * kr * fall + luma + tint;
-      g = g * kg * fall + luma;
-      b = b * kb * fall + luma - tint;
-      out[i3] = toned(r);
-      out[i3 + 1] = toned(g);
-      out[i3 + 2] = toned(b);
+      const lens = fall[square] ?? 1;
+      const luma = speck * 0.055;
+      out[i3] = toned(r * kr * lens + luma + tint);
+      out[i3 + 1] = toned(g * kg * lens + luma);
+      out[i3 + 2] = toned(b * kb * lens + luma - tint);
     }
   }
   return out;

@@ -1,7 +1,7 @@
 /** The lines that leave the chip: to the display, to the nets of the network, and stubs that small parts hang on. */
 import type { Chance } from '../chance';
 import { at, plus, turned, type Point } from './geometry';
-import type { Floor } from './floors';
+import type { Floor } from './floors/floor';
 import type { Track, Via } from './types';
 
 const THIN = 0.22;
@@ -14,10 +14,10 @@ export type FanOut = {
 };
 
 /** Distance between neighbouring legs. */
-export const legPitch = (size: number, legs: number) => (size * 0.86) / (legs - 1);
+const legPitch = (size: number, legs: number) => (size * 0.86) / (legs - 1);
 
 /** The tip of a leg: sides 0 left, 1 top, 2 right, 3 bottom, counted along the side. */
-export function legTip(floor: Floor, side: number, index: number, out = 1.5): Point {
+function legTip(floor: Floor, side: number, index: number, out = 1.5): Point {
   const { brain } = floor;
   if (!brain) return at(0, 0);
   const along = (index - (brain.legs - 1) / 2) * legPitch(brain.size, brain.legs);

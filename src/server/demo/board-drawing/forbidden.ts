@@ -1,7 +1,7 @@
 /** Where on a floor no part may stand. */
 import type { Box, Point } from './geometry';
 import { goesThrough } from './footprint';
-import type { Floor } from './floors';
+import type { Floor } from './floors/floor';
 import type { Part } from './types';
 
 const around = ({ x, y }: Point, r: number): Box => ({
@@ -24,6 +24,12 @@ export function forbidden(floor: Floor, part: Part): Box[] {
     });
   for (const { at: jack } of floor.jacks)
     boxes.push({ x0: jack.x - 5, y0: jack.y - 9.4, x1: jack.x + 5, y1: jack.y });
+  // Wires lead off over the board's edge.
+  for (const { at: end, turn, ends } of floor.wires) {
+    const y = ends.length * 3.5;
+    const [x0, x1] = turn === 180 ? [0, end.x] : [end.x, floor.width];
+    boxes.push({ x0, y0: end.y - y, x1, y1: end.y + y });
+  }
   if (wafer && goesThrough(part)) boxes.push(around(wafer.at, wafer.radius + 0.5));
   else if (wafer?.kind === 'rotary') boxes.push(around(wafer.at, wafer.radius * 0.3));
   if (display) {

@@ -38,22 +38,6 @@ export function toSegment(point: Point, p: Point, q: Point): number {
   return Math.hypot(point.x - p.x - t * dx, point.y - p.y - t * dy);
 }
 
-/** Whether the point lies inside the closed polygon. */
-export function inside({ x, y }: Point, polygon: readonly Point[]): boolean {
-  let within = false;
-  let before = polygon[polygon.length - 1];
-  for (const corner of polygon) {
-    if (
-      before &&
-      corner.y > y !== before.y > y &&
-      x < ((before.x - corner.x) * (y - corner.y)) / (before.y - corner.y) + corner.x
-    )
-      within = !within;
-    before = corner;
-  }
-  return within;
-}
-
 export const boxAround = (centre: Point, width: number, height: number): Box => ({
   x0: centre.x - width / 2,
   y0: centre.y - height / 2,

@@ -1,15 +1,15 @@
 /** Colours under one lamp: the shading of round, domed and flat things as SVG gradients, each defined once. */
 import { at, num, turned, type Point } from './geometry';
 
-export type Rgb = readonly [number, number, number];
+type Rgb = readonly [number, number, number];
 
 const clamp = (value: number) => Math.max(0, Math.min(255, Math.round(value)));
-export const rgb = (hex: string): Rgb => [
+const rgb = (hex: string): Rgb => [
   parseInt(hex.slice(1, 3), 16),
   parseInt(hex.slice(3, 5), 16),
   parseInt(hex.slice(5, 7), 16),
 ];
-export const hex = (colour: Rgb): string =>
+const hex = (colour: Rgb): string =>
   `#${colour.map((c) => clamp(c).toString(16).padStart(2, '0')).join('')}`;
 export const mixed = (from: string, to: string, share: number): string => {
   const b = rgb(to);

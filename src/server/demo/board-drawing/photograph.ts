@@ -59,7 +59,7 @@ async function darkness(svg: Buffer, frame: Frame, blur: number): Promise<Buffer
     .raw()
     .toBuffer({ resolveWithObject: true });
   return sharp(data, { raw: info })
-    .resize(frame.width, frame.height, { fit: 'fill', kernel: 'cubic' })
+    .resize(frame.width, frame.height, { fit: 'fill', kernel: 'linear' })
     .extractChannel(0)
     .raw()
     .toBuffer();

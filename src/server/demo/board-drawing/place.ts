@@ -5,7 +5,7 @@
 import type { Chance } from '../chance';
 import { at, turned, type Box } from './geometry';
 import { goesThrough } from './footprint';
-import type { Floor } from './floors';
+import type { Floor } from './floors/floor';
 import { forbidden } from './forbidden';
 import { roomOn, type Room } from './room';
 import type { Part } from './types';

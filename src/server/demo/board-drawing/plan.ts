@@ -2,10 +2,13 @@
 import type { DemoBoard } from '../content';
 import { chanceFrom } from '../chance';
 import { fanOut } from './fan-out';
-import { floorOf, type Floor } from './floors';
-import { mainParts, smallFry } from './parts-of';
+import { floorOf } from './floors';
+import type { Floor } from './floors/floor';
+import { smallFry } from './companions';
+import { mainParts } from './parts-of';
 import { placed } from './place';
-import { routed, type Copper } from './route';
+import type { Copper } from './laid-copper';
+import { routed } from './route';
 import { tucked } from './tuck';
 import type { Part } from './types';
 

@@ -1,6 +1,6 @@
 /** The grid tracks are laid on: two layers of cells, with what stands in a track's way. */
 import { at, toSegment, type Point } from './geometry';
-import type { Floor } from './floors';
+import type { Floor } from './floors/floor';
 import { roomOn } from './room';
 import type { Layer } from './types';
 

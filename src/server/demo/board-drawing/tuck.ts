@@ -1,6 +1,6 @@
 /** Puts the small parts around the chip into the gaps that are left. */
 import { at, distance, overlap, type Box, type Point } from './geometry';
-import type { Floor } from './floors';
+import type { Floor } from './floors/floor';
 import { boxOf } from './footprint';
 import { forbidden } from './forbidden';
 import { roomOn } from './room';

@@ -1,34 +1,16 @@
 /** One drawing and one shadow for every kind of body. */
 import type { Part } from '../types';
 import { axialShade, drawAxial } from './axial';
-import type { Brush, Shade, Wear } from './brush';
+import { ellipsePath, type Brush, type Shade, type Wear } from './brush';
 import { blobShade, drawBlob, drawLegged, leggedShade } from './chips';
 import { discShade, drawDisc } from './disc';
 import { drawFuse, fuseShade } from './fuse';
-import {
-  drawBead,
-  drawHeatsink,
-  drawJack,
-  drawLoop,
-  drawWires,
-  heatsinkShade,
-  jackShade,
-  loopShade,
-  wiresShade,
-} from './metal';
+import { drawBead, drawHeatsink, heatsinkShade } from './heatsink';
+import { drawJack, jackShade } from './jack';
+import { drawBuzzer, drawCrystal, drawHeader } from './low';
 import { chipShade, drawChip, drawMelf, drawSot, melfShade, sotShade } from './small';
-import {
-  boxShade,
-  canShade,
-  drawBox,
-  drawBuzzer,
-  drawCan,
-  drawCrystal,
-  drawHeader,
-  drawTrimmer,
-  drawWinding,
-} from './tall';
-import { ellipsePath } from './brush';
+import { boxShade, canShade, drawBox, drawCan, drawTrimmer, drawWinding } from './tall';
+import { drawLoop, drawWires, loopShade, wiresShade } from './wire';
 
 const pitchOf = ({ pads }: Part): number => Math.abs((pads[1]?.x ?? 0) - (pads[0]?.x ?? 0));
 
