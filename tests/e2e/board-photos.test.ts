@@ -213,6 +213,14 @@ test('a part pointed at elsewhere lights its pin, and a pin tells the page', asy
   await lit.waitFor();
   await point('R99');
   await lit.waitFor({ state: 'detached' });
+  // The bench says how parts stand; the symbol on the pin then says it too.
+  expect(await page.locator('.pin-hold .symbol-failed').count()).toBe(0);
+  await page.evaluate(() => {
+    Object.assign(window, { meterwrightStandings: { RV1: 'short' } });
+    window.dispatchEvent(new CustomEvent('mw:standings'));
+  });
+  await page.locator('.pin-hold .symbol-failed .symbol-bridge').waitFor();
+
   await page.evaluate(() => {
     const heard: unknown[] = [];
     Object.assign(window, { heard });
