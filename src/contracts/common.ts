@@ -10,7 +10,7 @@ export const Problem = z.object({
 });
 export type Problem = z.infer<typeof Problem>;
 
-/** One line of text: no control characters, trimmed. */
+/** One line of text: no control characters, no half of a surrogate pair, trimmed. */
 export const line = (max: number, min = 0) =>
   z
     .string()
@@ -18,7 +18,7 @@ export const line = (max: number, min = 0) =>
     .min(min, min === 1 ? 'Nothing was given: this is needed.' : undefined)
     .max(max, `Longer than ${max} characters: shorten it.`)
     .regex(
-      /^[^\u0000-\u001f\u007f]*$/u,
+      /^[^\u0000-\u001f\u007f\p{Cs}]*$/u,
       'Has a control character: one line of plain text is needed.',
     );
 
@@ -33,7 +33,7 @@ export const prose = (max: number, min = 0) =>
         .min(min, min === 1 ? 'Nothing was given: this is needed.' : undefined)
         .max(max, `Longer than ${max} characters: shorten it.`)
         .regex(
-          /^[^\u0000-\u0008\u000b-\u001f\u007f]*$/u,
+          /^[^\u0000-\u0008\u000b-\u001f\u007f\p{Cs}]*$/u,
           'Has a control character: plain text is needed.',
         ),
     );

@@ -1,15 +1,12 @@
 /** The computations outside clients rely on; their shapes are fixed. */
 import * as z from 'zod/v4';
 import { INCIDENTS, MODES, PART_KINDS, STANDINGS } from '@/domain/parts/kinds';
+import { line } from './common';
 import { defineRoute } from './route';
 
-const Name = z
-  .string()
-  .trim()
-  .min(1, 'Nothing was given: a name is needed.')
-  .max(40, 'Longer than 40 characters: shorten it.');
+const Name = line(40, 1);
 const Tolerance = z.number().gt(0).lt(1);
-const ohms = z.number().gt(0, 'Not above zero: ohms are needed.').max(1e15);
+const ohms = z.number().min(1e-9, 'Not above zero: ohms are needed, a nanoohm at least.').max(1e15);
 
 export const MAX_PARTS = 200;
 export const MAX_READINGS = 60;
