@@ -109,4 +109,4 @@ test('after the app is killed amid 200 uploads and ticket writes, what was ackno
   expect(events).toHaveLength(UPLOADS);
   const notes = (await shop.db.select().from(ticketNotes)).map(({ body }) => body);
   for (const body of acknowledged) expect(notes.filter((note) => note === body)).toHaveLength(1);
-});
+}, 600_000);
