@@ -2,7 +2,7 @@
 import { predict } from '../diagnosis/predict';
 import type { Ohms } from '../network/types';
 import { violations } from '../network/validate';
-import { defaultOhms, defaultTolerance, healthyFloor } from '../parts/defaults';
+import { expectedOf } from '../parts/check-expected';
 import { formatOhms } from '../quantities/format';
 import { drawnNetwork, placePoints } from './points';
 import type { Points, SheetBoard, SheetPart } from './types';
@@ -23,14 +23,20 @@ function banded(ohms: Ohms, band: number, overRange = 60e6): Expectation {
   return { ohms, low: ohms * Math.exp(-band), high: ohms * Math.exp(band) };
 }
 
-/** A part that is not drawn: its own value with its tolerance, or the floor of its kind. */
-function expectedOfPart(part: SheetPart): Expectation | null {
-  const floor = part.ohms === null ? healthyFloor(part.kind) : null;
-  if (floor !== null) return { ohms: 'OL', low: floor, high: 'OL' };
-  const ohms = part.ohms ?? defaultOhms(part.kind);
-  if (ohms === null) return null;
-  const tolerance = part.tolerance ?? defaultTolerance(part.kind);
-  return { ohms, low: ohms * (1 - tolerance), high: ohms * (1 + tolerance) };
+/** A part that is not drawn is held against what it is judged by: its value with its tolerance, or its kind's floor. */
+function expectedOfPart({ kind, ohms, tolerance }: SheetPart, points: Points): Expectation | null {
+  const { position } = points;
+  const { band, judgedBy } = expectedOf({
+    kind,
+    ohms,
+    tolerance,
+    position,
+    marked: null,
+    unread: false,
+  });
+  if (judgedBy === 'unknown') return null;
+  if (judgedBy === 'floor') return { ohms: 'OL', low: band.low, high: 'OL' };
+  return { ohms: ohms ?? Math.sqrt(Math.max(band.low, band.high / 100) * band.high), ...band };
 }
 
 /**
@@ -43,7 +49,8 @@ export function outlookOn(board: SheetBoard): (points: Points) => Outlook {
   return (points) => {
     const placed = placePoints(board, points);
     if (placed.kind === 'unusable') return { expected: null, unusable: placed.reason };
-    if (placed.kind === 'alone') return { expected: expectedOfPart(placed.part), unusable: null };
+    if (placed.kind === 'alone')
+      return { expected: expectedOfPart(placed.part, points), unusable: null };
     if (!sound) return { expected: null, unusable: null };
     const [healthy] = predict(network, [{ ...placed.probe, value: 'OL' }]);
     return {

@@ -22,8 +22,8 @@ export function readPasted(text: string): Pasted {
   const grid = split(text, separator).filter((line) => line.some((cell) => cell !== ''));
   const width = Math.max(0, ...grid.map((line) => line.length));
   const [only] = grid;
-  const last = only?.at(-1) ?? '';
-  if (grid.length <= 1 && (width <= 1 || isReading(text.trim()) || !isReading(last)))
+  const sentence = separator !== '\t' && !isReading(only?.at(-1) ?? '');
+  if (grid.length <= 1 && (width <= 1 || isReading(text.trim()) || sentence))
     return { kind: 'cell', text: text.trim().slice(0, LONGEST) };
   const lone = width <= 1 || (separator === ',' && grid.every((line) => isReading(line.join(','))));
   if (lone) return { kind: 'column', values: grid.map((line) => line.join(separator)) };
