@@ -10,8 +10,6 @@ import { drawnNetwork, placePoints } from './points';
 import { sentencesOn } from './sentences';
 import type { SheetPart, SheetReading } from './types';
 
-export { drawnNetwork };
-
 export type AloneVerdict = {
   reading: number;
   ref: string;

@@ -1,7 +1,7 @@
 /** What the demo shop's technicians measured, and when they were at work. */
 import { randomUUID } from 'node:crypto';
 import type { Database } from '@/db/client';
-import { drawnNetwork } from '@/domain/bench/judge-sheet';
+import { drawnNetwork } from '@/domain/bench/points';
 import { predictUnder } from '@/domain/diagnosis/predict';
 import type { Permission, StaffRole } from '@/domain/people';
 import { formatTrade } from '@/domain/quantities/format';
