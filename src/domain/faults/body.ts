@@ -48,8 +48,10 @@ function blockWords(block: Block): string {
     case 'bulletList':
     case 'orderedList':
       return block.content.map((item) => item.content.map(blockWords).join(' ')).join(' ');
-    case 'reading':
-      return `${block.attrs.from} ${block.attrs.to} ${block.attrs.position} ${block.attrs.typed}`;
+    case 'reading': {
+      const { from, to, position, typed } = block.attrs;
+      return `${to === '' ? from : `${from} – ${to}`} ${typed}${position === '' ? '' : ` (${position})`};`;
+    }
     case 'photo':
       return block.attrs.caption;
   }

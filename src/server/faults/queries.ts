@@ -7,7 +7,6 @@ import { faultNotes, faultRevisions, faultSteps } from '@/db/schema/faults';
 import { users } from '@/db/schema/people';
 import { boards } from '@/db/schema/shop';
 import { tickets } from '@/db/schema/tickets';
-import { sectionWords } from '@/domain/faults/body';
 import { fitOf, type TicketFacts } from '@/domain/faults/fit';
 import { termsOf } from '@/domain/faults/search-terms';
 import { offeredFaultSteps } from '@/domain/faults/states';
@@ -215,7 +214,7 @@ export async function proposeNotes(
     proposals.push({
       id: note.id,
       title: note.title,
-      excerpt: excerptOf(sectionWords(note.body.proof) || note.document.cause),
+      excerpt: excerptOf(note.document.cause),
       board: note.board?.label ?? null,
       partKind: note.partKind,
       ...fit,

@@ -26,7 +26,7 @@ export type NoteHead = {
 export type Proposal = {
   id: number;
   title: string;
-  /** The first words of its proof, or of its cause. */
+  /** The first words of its cause. */
   excerpt: string;
   /** `LB-40 rev C`, or null for a note on a part family alone. */
   board: string | null;
