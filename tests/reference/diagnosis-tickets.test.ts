@@ -12,7 +12,7 @@ const INCIDENTS: readonly Incident[] = [
   'overvoltage-on-volts',
   'dropped',
 ];
-const PER_NETWORK = { 1: 14, 2: 8 } as const;
+const PER_NETWORK = { 1: 8, 2: 4 } as const;
 
 interface Score {
   tickets: number;
@@ -23,7 +23,7 @@ interface Score {
 /** Simulated tickets of every network with so many faults that the readings can tell. */
 function simulate(faultCount: 1 | 2, seed: number): Score {
   const score = { tickets: 0, first: 0, three: 0 };
-  testNetworks.forEach(({ name, network, probes }, at) => {
+  testNetworks.forEach(({ network, probes }, at) => {
     const random = seeded(seed * 1000 + at);
     let kept = 0;
     for (let tries = 0; kept < PER_NETWORK[faultCount] && tries < 80; tries++) {
@@ -42,13 +42,6 @@ function simulate(faultCount: 1 | 2, seed: number): Score {
       score.tickets++;
       if (rank === 0) score.first++;
       if (rank >= 0) score.three++;
-      else if (process.env['SHOW_MISSES'])
-        console.log(
-          name,
-          key(faults),
-          JSON.stringify(faults),
-          hypotheses.map((h) => `${key(h.faults)} ${h.probability.toFixed(3)}`).join(' | '),
-        );
     }
   });
   return score;
@@ -57,16 +50,14 @@ function simulate(faultCount: 1 | 2, seed: number): Score {
 describe('simulated tickets with tolerance and meter error', () => {
   it('rank a single fault that can be told in the first three in at least 90 %', () => {
     const score = simulate(1, 7);
-    console.log('single', score);
-    expect(score.tickets).toBeGreaterThan(150);
+    expect(score.tickets).toBeGreaterThan(120);
     expect(score.three / score.tickets).toBeGreaterThanOrEqual(0.9);
     expect(score.first / score.tickets).toBeGreaterThanOrEqual(0.8);
   });
 
   it('rank two faults that can be told in the first three in at least 90 %', () => {
     const score = simulate(2, 8);
-    console.log('pairs', score);
-    expect(score.tickets).toBeGreaterThan(60);
+    expect(score.tickets).toBeGreaterThan(50);
     expect(score.three / score.tickets).toBeGreaterThanOrEqual(0.9);
   });
 });
