@@ -13,6 +13,30 @@ const PHASES = Object.keys(PHASE_NAMES) as Phase[];
 
 const countOf = (rows: readonly Row[]) => rows.filter((row) => row.saved && !isStruck(row)).length;
 
+/** Without script the tabs do not turn and nothing can be typed: the readings after the repair follow as text. */
+function WithoutScript({ after, editable }: { after: readonly Row[]; editable: boolean }) {
+  const saved = after.filter((row) => row.saved);
+  return (
+    <div className="sheet-foot">
+      {editable && <p>Readings are entered with script, which is off here.</p>}
+      {saved.length > 0 && (
+        <>
+          <p>After repair:</p>
+          <ol>
+            {saved.map(({ key, cells: { from, to, position, lifted, typed } }) => (
+              <li key={key} className="mono">
+                {[to ? `${from} to ${to}` : from, position, lifted && `${lifted} lifted`, typed]
+                  .filter(Boolean)
+                  .join(', ')}
+              </li>
+            ))}
+          </ol>
+        </>
+      )}
+    </div>
+  );
+}
+
 export function SheetPanel({
   sheets,
   phase,
@@ -83,6 +107,9 @@ export function SheetPanel({
           />
         )}
       </div>
+      <noscript>
+        <WithoutScript after={sheets['after-repair']} editable={editable} />
+      </noscript>
       {editable && (
         <p className="sheet-foot bench-keys">
           {full ? (

@@ -106,7 +106,7 @@ export function SheetRow({
           {...plain('number')}
           className="bench-number"
           aria-label={`Row ${number}${mark ? `, ${mark[1]}` : ''}${doubtful ? ', measure again' : ''}`}
-          title={row.saved ? `${row.saved.by}` : undefined}
+          title={row.saved ? `Entered by ${row.saved.by}` : undefined}
         >
           <span className="bench-count">{number}</span>
           <span className="bench-mark" aria-hidden="true">

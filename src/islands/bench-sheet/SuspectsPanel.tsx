@@ -54,6 +54,7 @@ export function SuspectsPanel({
   const alone = told?.alone ?? [];
   const used = (told?.expected.length ?? 0) + alone.length;
   const healthy = diagnosis?.healthy ?? 0;
+  const ranked = diagnosis ? gathered(diagnosis) : [];
   const standing = (which: 'cleared' | 'untouched') =>
     diagnosis?.parts.filter((part) => part.standing === which) ?? [];
   return (
@@ -86,9 +87,12 @@ export function SuspectsPanel({
           <ProbabilityScale value={healthy} label="Network healthy" tone="ok" />
         </div>
       )}
-      {diagnosis && (
+      {diagnosis && ranked.length === 0 && alone.length === 0 && healthy < LOOK_ELSEWHERE && (
+        <p className="suspect-none">No part is a suspect by these readings.</p>
+      )}
+      {ranked.length > 0 && (
         <ol className="rows suspect-list">
-          {gathered(diagnosis).map((members) => (
+          {ranked.map((members) => (
             <li key={members[0]?.ref} className={members.length > 1 ? 'suspect-group' : undefined}>
               {members.length > 1 && (
                 <p className="suspect-alike">
