@@ -1,4 +1,7 @@
-/** Money as people type it. */
+/** Money as people type it, and the greatest sum that is kept. */
+
+/** The greatest sum, in minor units: 99,999.99. */
+export const MOST_MINOR = 9_999_999;
 
 /**
  * A sum in minor units (two decimals) from text such as `72.48`, `72,48`, `72` or `€ 72.48`; null when it is not

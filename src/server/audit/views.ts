@@ -12,7 +12,7 @@ export async function auditPage(
   zone: string,
 ): Promise<Outcome<{ items: AuditLine[]; next: string | null }>> {
   const { sort, limit } = query;
-  const after = readCursor(sort, query.cursor);
+  const after = readCursor(sort, query.cursor, 'date');
   if (!after.ok) return after;
   const rows = await listAudit(db, query, zone, { limit: limit + 1, after: after.value });
   return done(pageOf(rows, limit, sort, placeOfLine));

@@ -4,6 +4,8 @@ import { done, refuseField, type Outcome } from '../refusal';
 
 /** Where a page ended: the sorted column's value and the key of its last row. */
 export type Place = { value: string | number | Date; id: number };
+/** What the sorted column holds, as Drizzle names it. */
+export type Held = 'string' | 'number' | 'date';
 
 const wrong = () => refuseField('cursor', 'Not a cursor of this list and order: begin anew.');
 
@@ -13,8 +15,15 @@ export function writeCursor(sort: string, { value, id }: Place): string {
   return Buffer.from(JSON.stringify([sort, kept, id])).toString('base64url');
 }
 
-/** The place again; undefined when there is no cursor, a refusal when it is not one of this order. */
-export function readCursor(sort: string, cursor: string | undefined): Outcome<Place | undefined> {
+/**
+ * The place again; undefined when there is no cursor, a refusal when it is not one of this order or its value is not
+ * of the kind that the sorted column holds.
+ */
+export function readCursor(
+  sort: string,
+  cursor: string | undefined,
+  held: Held,
+): Outcome<Place | undefined> {
   if (cursor === undefined) return done(undefined);
   let parts: unknown;
   try {
@@ -25,8 +34,10 @@ export function readCursor(sort: string, cursor: string | undefined): Outcome<Pl
   if (!Array.isArray(parts) || parts.length !== 3 || parts[0] !== sort) return wrong();
   const [, kept, id] = parts as unknown[];
   if (typeof id !== 'number' || !Number.isSafeInteger(id)) return wrong();
-  if (typeof kept === 'string' || (typeof kept === 'number' && Number.isFinite(kept)))
-    return done({ value: kept, id });
+  if (held !== 'date')
+    return typeof kept === held && (typeof kept === 'string' || Number.isFinite(kept))
+      ? done({ value: kept as string | number, id })
+      : wrong();
   const at = (kept as { at?: unknown } | null)?.at;
   if (typeof at !== 'number' || Math.abs(at) > 8.64e15) return wrong();
   return done({ value: new Date(at), id });

@@ -72,6 +72,9 @@ const personOf = (row: Row): Person => ({
   version: row.version,
 });
 
+/** What the column holds that the list is in order of. */
+export const heldBy = (sort: PeopleQuery['sort']) => SORTED[orderOf(sort).by].dataType;
+
 /** A person's place in the order of the list. */
 export function placeOfPerson(sort: PeopleQuery['sort'], person: Person): Place {
   const { by } = orderOf(sort);

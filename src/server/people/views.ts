@@ -4,14 +4,14 @@ import type { Queryable } from '@/db/client';
 import { everyRow, pageOf, readCursor } from '../http/cursor';
 import { csvResponse, type CsvColumn } from '../http/csv';
 import { done, type Outcome } from '../refusal';
-import { listPeople, placeOfPerson } from './queries';
+import { heldBy, listPeople, placeOfPerson } from './queries';
 
 export async function peoplePage(
   db: Queryable,
   query: PeopleQuery,
 ): Promise<Outcome<{ items: Person[]; next: string | null }>> {
   const { sort, limit } = query;
-  const after = readCursor(sort, query.cursor);
+  const after = readCursor(sort, query.cursor, heldBy(sort));
   if (!after.ok) return after;
   const rows = await listPeople(db, query, { limit: limit + 1, after: after.value });
   return done(pageOf(rows, limit, sort, (person) => placeOfPerson(sort, person)));

@@ -3,6 +3,7 @@ import { and, count, eq } from 'drizzle-orm';
 import { inTransaction, type Database, type Queryable } from '@/db/client';
 import { users } from '@/db/schema/people';
 import { readings, ticketCautions, ticketEvents, tickets } from '@/db/schema/tickets';
+import { MOST_MINOR } from '@/domain/money';
 import { roleMay } from '@/domain/people';
 import { decideStep, isClosed, type Stage, type Step } from '@/domain/tickets/stages';
 import { CAUTION_CODES, type Caution } from '@/domain/tickets/vocabulary';
@@ -83,8 +84,12 @@ export async function takeStep(
         },
       );
     const { estimate } = input;
-    if (estimate && (estimate.total.currency !== shop.currency || estimate.total.amount <= 0))
-      return refuseField('estimate.total', `A total above zero in ${shop.currency} is needed.`);
+    const { amount = 1, currency = shop.currency } = estimate?.total ?? {};
+    if (currency !== shop.currency || amount <= 0 || amount > MOST_MINOR)
+      return refuseField(
+        'estimate.total',
+        `${amount} ${currency} minor units were given: a total above zero, up to ${MOST_MINOR}, in ${shop.currency} is needed.`,
+      );
     const decided = decideStep(await factsOf(tx, row), actor.role, input.step, {
       note: input.note,
       estimate: estimate && { minor: estimate.total.amount, work: estimate.work },
