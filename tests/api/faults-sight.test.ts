@@ -108,6 +108,16 @@ test('the list narrows, sorts, pages without loss, and comes as a file', async (
   } while (cursor);
   expect(new Set(all).size).toBe(Object.keys(ids).length);
   expect(all).toHaveLength(Object.keys(ids).length);
+  await shop.draft('senior', 'Marked 100 % _ note', {
+    symptoms: ['burnt', 'drifts'],
+    partKind: 'mov',
+  });
+  const narrow = `symptom=drifts&kind=mov&board=${shop.boardIds.main}`;
+  expect((await titles(`/api/faults?${narrow}`)).titles).toEqual(['Marked 100 % _ note']);
+  expect((await titles('/api/faults?symptom=display')).titles).toEqual([]);
+  // What LIKE would take for a pattern means itself.
+  expect((await titles('/api/faults?q=100+%25+_')).titles).toEqual(['Marked 100 % _ note']);
+  expect((await titles('/api/faults?q=_____')).titles).toEqual([]);
   const bad = await shop.call('senior', 'GET', '/api/faults?cursor=nonsense');
   expect(bad.status).toBe(422);
   const csv = await shop.call('counter', 'GET', '/api/faults', { headers: { accept: 'text/csv' } });

@@ -27,6 +27,7 @@ describe('what the editor makes of a note', () => {
     const document = {
       type: 'doc',
       content: [
+        { type: 'paragraph' },
         {
           type: 'paragraph',
           content: [{ type: 'text', text: 'x', marks: [link, { type: 'strike' }] }],

@@ -68,10 +68,11 @@ function toBlock(node: JSONContent): Block[] {
 
 const isEmpty = (block: Block | undefined) => block?.type === 'paragraph' && !block.content?.length;
 
-/** The document's blocks; the empty paragraphs the editor keeps at the end for the caret are not part of the note. */
+/** The document's blocks; empty lines before and after them are the editor's, for the caret, and not part of the note. */
 export function toBlocks(document: JSONContent): Block[] {
   const blocks = (document.content ?? []).flatMap(toBlock);
   while (isEmpty(blocks.at(-1))) blocks.pop();
+  while (isEmpty(blocks[0])) blocks.shift();
   return blocks;
 }
 

@@ -1,7 +1,7 @@
-/** Reading notes and their revisions, and proposing the ones that fit a ticket. */
-import { and, desc, eq, max } from 'drizzle-orm';
+/** Reading notes, their revisions and lists of them, and proposing the ones that fit a ticket. */
+import { and, asc, count, desc, eq, inArray, like, max, or, sql, type SQL } from 'drizzle-orm';
 import { alias } from 'drizzle-orm/mysql-core';
-import type { FaultDetail, FaultRow, Revision, RevisionRow } from '@/contracts/faults';
+import type { FaultDetail, FaultRow, FaultsQuery, Revision, RevisionRow } from '@/contracts/faults';
 import type { Queryable } from '@/db/client';
 import { faultNotes, faultRevisions, faultSteps } from '@/db/schema/faults';
 import { users } from '@/db/schema/people';
@@ -10,43 +10,15 @@ import { tickets } from '@/db/schema/tickets';
 import { fitOf, type TicketFacts } from '@/domain/faults/fit';
 import { termsOf } from '@/domain/faults/search-terms';
 import { offeredFaultSteps } from '@/domain/faults/states';
+import { roleMay } from '@/domain/people';
 import type { StaffActor } from '../auth/actor';
-import { correctionWaits, mayEdit, mayRead, seesAllRevisions, standingOf } from './policy';
-import { faultIndex } from './search-index';
+import { containing } from '../customers/queries';
+import { afterPlace, pageOf, readCursor } from '../http/cursor';
+import { done, type Outcome } from '../refusal';
+import { faultIndex } from '../search/note-index';
+import { mayEdit, mayRead, seesAllRevisions, standingOf } from './policy';
 import type { NoteHead, Proposal } from './types';
-
-type BoardRow = typeof boards.$inferSelect;
-type NoteRow = typeof faultNotes.$inferSelect;
-
-export const boardName = (board: BoardRow | null) =>
-  board && { id: board.id, label: `${board.code} rev ${board.revision}`, maker: board.maker };
-
-/** A note as a line of a list. What only those who work on it may know is left out for the others. */
-export function faultRow(
-  actor: StaffActor,
-  note: NoteRow,
-  board: BoardRow | null,
-  author: string,
-): FaultRow {
-  const edits = mayEdit(actor, note);
-  return {
-    id: note.id,
-    title: note.title,
-    state: note.state,
-    board: boardName(board),
-    partKind: note.partKind,
-    incident: note.incident,
-    symptoms: note.symptoms,
-    author,
-    own: note.createdBy === actor.id,
-    correction: edits && correctionWaits(note),
-    revision: edits ? note.revision : (note.publishedRevision ?? note.revision),
-    publishedRevision: note.publishedRevision,
-    createdAt: note.createdAt.toISOString(),
-    updatedAt: note.updatedAt.toISOString(),
-    publishedAt: note.publishedAt?.toISOString() ?? null,
-  };
-}
+import { boardName, faultRow } from './views';
 
 /** The head of a note that this person may read, or null. */
 export async function headOf(
@@ -187,6 +159,106 @@ export async function stepsOf(db: Queryable, actor: StaffActor, id: number) {
   const note = await headOf(db, actor, id);
   if (!note || !seesAllRevisions(actor, note)) return [];
   return db.select().from(faultSteps).where(eq(faultSteps.noteId, id)).orderBy(faultSteps.id);
+}
+
+/** The rule of policy.ts `mayRead`, as a condition. */
+export function openTo(actor: StaffActor): SQL | undefined {
+  if (roleMay(actor.role, 'fault.publish')) return undefined;
+  if (!roleMay(actor.role, 'fault.draft')) return eq(faultNotes.state, 'published');
+  return or(
+    inArray(faultNotes.state, ['published', 'in-review']),
+    eq(faultNotes.createdBy, actor.id),
+  );
+}
+
+type Choice = Pick<FaultsQuery, 'q' | 'state' | 'board' | 'kind' | 'symptom'>;
+
+function conditions(actor: StaffActor, query: Choice): (SQL | undefined)[] {
+  const pattern = containing(query.q);
+  return [
+    openTo(actor),
+    query.state && eq(faultNotes.state, query.state),
+    query.board ? eq(faultNotes.boardId, query.board) : undefined,
+    query.kind && eq(faultNotes.partKind, query.kind),
+    query.symptom
+      ? sql`JSON_CONTAINS(${faultNotes.symptoms}, ${JSON.stringify(query.symptom)})`
+      : undefined,
+    query.q ? or(like(faultNotes.title, pattern), like(faultNotes.words, pattern)) : undefined,
+  ];
+}
+
+/** One page of the notes this person may see. */
+export async function listFaults(
+  db: Queryable,
+  actor: StaffActor,
+  query: FaultsQuery,
+): Promise<Outcome<{ items: FaultRow[]; next: string | null }>> {
+  const down = query.sort.startsWith('-');
+  const column = query.sort.endsWith('title') ? faultNotes.title : faultNotes.updatedAt;
+  const place = readCursor(query.sort, query.cursor, column.dataType);
+  if (!place.ok) return place;
+  const order = down ? desc : asc;
+  const rows = await db
+    .select({ note: faultNotes, board: boards, author: users.name })
+    .from(faultNotes)
+    .innerJoin(users, eq(users.id, faultNotes.createdBy))
+    .leftJoin(boards, eq(boards.id, faultNotes.boardId))
+    .where(
+      and(
+        ...conditions(actor, query),
+        place.value && afterPlace(column, faultNotes.id, place.value, down),
+      ),
+    )
+    .orderBy(order(column), order(faultNotes.id))
+    .limit(query.limit + 1);
+  const page = pageOf(rows, query.limit, query.sort, ({ note }) => ({
+    value: query.sort.endsWith('title') ? note.title : note.updatedAt,
+    id: note.id,
+  }));
+  return done({
+    items: page.items.map(({ note, board, author }) => faultRow(actor, note, board, author)),
+    next: page.next,
+  });
+}
+
+/** A numbered page of one state's notes with how many there are, for the page that shows them. */
+export async function listFaultsPage(
+  db: Queryable,
+  actor: StaffActor,
+  query: Choice & { sort: string },
+  page: number,
+  size: number,
+): Promise<{ items: FaultRow[]; total: number }> {
+  const where = and(...conditions(actor, query));
+  const column = query.sort.endsWith('title') ? faultNotes.title : faultNotes.updatedAt;
+  const order = query.sort === 'title' || query.sort === 'updated' ? asc : desc;
+  const [rows, [counted]] = await Promise.all([
+    db
+      .select({ note: faultNotes, board: boards, author: users.name })
+      .from(faultNotes)
+      .innerJoin(users, eq(users.id, faultNotes.createdBy))
+      .leftJoin(boards, eq(boards.id, faultNotes.boardId))
+      .where(where)
+      .orderBy(order(column), order(faultNotes.id))
+      .limit(size)
+      .offset((page - 1) * size),
+    db.select({ n: count() }).from(faultNotes).where(where),
+  ]);
+  return {
+    items: rows.map(({ note, board, author }) => faultRow(actor, note, board, author)),
+    total: counted?.n ?? 0,
+  };
+}
+
+/** Every note of a list, page after page: for a file. */
+export async function* everyFault(db: Queryable, actor: StaffActor, query: FaultsQuery) {
+  let cursor: string | undefined;
+  do {
+    const page = await listFaults(db, actor, { ...query, cursor, limit: 200 });
+    if (!page.ok) return;
+    yield* page.value.items;
+    cursor = page.value.next ?? undefined;
+  } while (cursor);
 }
 
 const excerptOf = (text: string, length = 160) =>

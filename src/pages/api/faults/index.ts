@@ -1,13 +1,13 @@
 import { faultRoutes } from '@/contracts/faults';
 import { draftFault } from '@/server/faults/commands';
-import { listFaults } from '@/server/faults/list';
-import { faultsCsv } from '@/server/faults/csv';
+import { everyFault, listFaults } from '@/server/faults/queries';
+import { faultsCsv } from '@/server/faults/views';
 import { wantsCsv } from '@/server/http/csv';
 import { serve } from '@/server/http/endpoint';
 import { done } from '@/server/refusal';
 
 export const GET = serve(faultRoutes.list, async ({ app, actor, query, request }) => {
-  if (wantsCsv(request)) return done(faultsCsv(request, app.db, actor, query));
+  if (wantsCsv(request)) return done(faultsCsv(request, everyFault(app.db, actor, query)));
   const page = await listFaults(app.db, actor, query);
   return page.ok ? done({ json: page.value }) : page;
 });

@@ -1,5 +1,5 @@
 import { searchRoutes } from '@/contracts/search';
-import { searchFaults } from '@/server/faults/search';
+import { searchFaults } from '@/server/search/queries';
 import { serve } from '@/server/http/endpoint';
 import { done } from '@/server/refusal';
 

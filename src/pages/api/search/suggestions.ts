@@ -1,5 +1,5 @@
 import { searchRoutes } from '@/contracts/search';
-import { suggestionSet } from '@/server/faults/search';
+import { suggestionSet } from '@/server/search/queries';
 import { serve } from '@/server/http/endpoint';
 import { done } from '@/server/refusal';
 

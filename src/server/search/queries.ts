@@ -16,7 +16,7 @@ import { SYMPTOM_CODES, SYMPTOMS } from '@/domain/tickets/vocabulary';
 import { pageByOffset } from '../http/pages';
 import type { Outcome } from '../refusal';
 import { done } from '../refusal';
-import { faultIndex, type FaultIndex, type IndexedNote } from './search-index';
+import { faultIndex, type FaultIndex, type IndexedNote } from './note-index';
 
 type Choice = Pick<SearchQuery, 'q' | 'board' | 'kind' | 'symptom' | 'sort'>;
 type Match = { note: IndexedNote; score: number; terms: Set<string> };
