@@ -11,6 +11,7 @@ const PAGE = 1600;
 
 export type StageProps = {
   photo: PhotoView;
+  title: string;
   view: View;
   stage: Size;
   onSize: (size: Size) => void;
@@ -87,7 +88,7 @@ export function PhotoStage(props: StageProps) {
       ref={stageRef}
       className={`photo-stage${whole ? '' : ' photo-stage-close'}${aim ? ' photo-stage-aim' : ''}`}
       role="application"
-      aria-label={`${photoWords(photo)}. Plus and minus zoom, arrow keys move, 0 shows the whole photo.${props.onMovePin ? ' P sets a pin.' : ''}`}
+      aria-label={`${photoWords(props.title, photo)}. Plus and minus zoom, arrow keys move, 0 shows the whole photo.${props.onMovePin ? ' P sets a pin.' : ''}`}
       tabIndex={0}
       onKeyDown={props.onKey}
       {...gestures}

@@ -1,20 +1,29 @@
 import type { PhotoView } from '@/contracts/photos';
+import { usePointed } from '../shared/pointing';
 import { counted, photoTitle } from './words';
 
-/** The photos as a contact sheet. Links, so that without script each opens in full. */
+/** The photos as a contact sheet; those that show the part pointed at say so. Links, so that without script each opens in full. */
 export function PhotoStrip({
   photos,
   chosen,
+  titleOf = photoTitle,
   onChoose,
 }: {
   photos: readonly PhotoView[];
   chosen: string | undefined;
+  titleOf?: (photo: PhotoView) => string;
   onChoose: (id: string) => void;
 }) {
+  const pointed = usePointed();
   return (
     <ul className="contact-sheet">
       {photos.map((photo) => (
-        <li key={photo.id}>
+        <li
+          key={photo.id}
+          className={
+            photo.pins.some(({ label }) => label === pointed) ? 'contact-sheet-lit' : undefined
+          }
+        >
           <a
             href={`/api/photos/${photo.id}/full`}
             aria-current={photo.id === chosen ? 'true' : undefined}
@@ -33,7 +42,7 @@ export function PhotoStrip({
               decoding="async"
             />
             <span className="contact-sheet-words">
-              <span>{photoTitle(photo)}</span>
+              <span>{titleOf(photo)}</span>
               {photo.pins.length > 0 && <span>{counted(photo.pins.length, 'pin')}</span>}
               {photo.shared && <span className="tag tag-copper">shared</span>}
             </span>

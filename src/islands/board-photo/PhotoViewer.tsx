@@ -36,6 +36,7 @@ export function PhotoViewer({
   live,
   parts,
   edits,
+  title = photoTitle(photo),
   children,
 }: {
   photo: PhotoView;
@@ -43,6 +44,7 @@ export function PhotoViewer({
   live: boolean;
   parts: readonly PinnablePart[];
   edits: ReturnType<typeof useEdits>;
+  title?: string;
   /** What stands under the stage: the other photos. */
   children: ReactNode;
 }) {
@@ -121,7 +123,7 @@ export function PhotoViewer({
     <div className="photo-viewer">
       <div className="photo-main">
         <div className="photo-tools">
-          <h3>{photoTitle(photo)}</h3>
+          <h3>{title}</h3>
           <div className="button-row">
             {canEdit && (
               <button
@@ -169,6 +171,7 @@ export function PhotoViewer({
           <PhotoStage
             stageRef={stageRef}
             photo={photo}
+            title={title}
             view={view}
             stage={stage}
             onSize={move.resize}

@@ -16,9 +16,12 @@ export const PHASE_LABELS: Readonly<Record<PhotoPhase, string>> = {
 export const photoTitle = ({ side, phase }: Pick<PhotoView, 'side' | 'phase'>): string =>
   `${SIDE_LABELS[side]}, ${PHASE_LABELS[phase].toLowerCase()}`;
 
+/** "Front": a photo of a board file stands for every board of its kind, repaired or not. */
+export const boardPhotoTitle = ({ side }: Pick<PhotoView, 'side'>): string => SIDE_LABELS[side];
+
 /** What a picture shows, for those who do not see it. */
-export const photoWords = (photo: PhotoView): string =>
-  [photoTitle(photo), photo.caption].filter(Boolean).join(': ');
+export const photoWords = (title: string, { caption }: Pick<PhotoView, 'caption'>): string =>
+  [title, caption].filter(Boolean).join(': ');
 
 export const counted = (n: number, one: string, many = `${one}s`): string =>
   `${n} ${n === 1 ? one : many}`;

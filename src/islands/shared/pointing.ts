@@ -19,16 +19,19 @@ export const pointing = (ref: string | null) => ({
   onBlur: () => pointAt(null),
 });
 
+/** Tells `heed` of every part pointed at on the page, null for none; answers how to stop it. */
+export function heedPointed(heed: (ref: string | null) => void): () => void {
+  const hear = (event: Event) => {
+    const { ref } = (event as CustomEvent<{ ref?: unknown }>).detail;
+    heed(typeof ref === 'string' ? ref : null);
+  };
+  window.addEventListener(EVENT, hear);
+  return () => window.removeEventListener(EVENT, hear);
+}
+
 /** The reference pointed at anywhere on the page, or null. */
 export function usePointed(): string | null {
   const [pointed, setPointed] = useState<string | null>(null);
-  useEffect(() => {
-    const hear = (event: Event) => {
-      const { ref } = (event as CustomEvent<{ ref?: unknown }>).detail;
-      setPointed(typeof ref === 'string' ? ref : null);
-    };
-    window.addEventListener(EVENT, hear);
-    return () => window.removeEventListener(EVENT, hear);
-  }, []);
+  useEffect(() => heedPointed(setPointed), []);
   return pointed;
 }

@@ -1,5 +1,5 @@
 /** Reading photos and pins. */
-import { and, asc, count, eq, inArray, ne, or, sql } from 'drizzle-orm';
+import { and, asc, count, eq, inArray, ne, or, sql, type SQL } from 'drizzle-orm';
 import type { PhotoView, PinView } from '@/contracts/photos';
 import type { Queryable } from '@/db/client';
 import { faultNotes, faultRevisions } from '@/db/schema/faults';
@@ -134,9 +134,16 @@ export async function photoView(db: Queryable, id: number): Promise<PhotoView | 
 }
 
 /** The ready photos of a ticket with their pins, in the order they were begun. */
-export async function photosOfTicket(db: Queryable, ticketId: number): Promise<PhotoView[]> {
+export const photosOfTicket = (db: Queryable, ticketId: number): Promise<PhotoView[]> =>
+  readyPhotos(db, eq(photos.ticketId, ticketId));
+
+/** The ready photos of a board file with their pins, in the order they were begun. */
+export const photosOfBoard = (db: Queryable, boardId: number): Promise<PhotoView[]> =>
+  readyPhotos(db, eq(photos.boardId, boardId));
+
+async function readyPhotos(db: Queryable, whose: SQL): Promise<PhotoView[]> {
   const rows = await views(db)
-    .where(and(eq(photos.ticketId, ticketId), eq(photos.state, 'ready')))
+    .where(and(whose, eq(photos.state, 'ready')))
     .orderBy(asc(photos.id));
   if (rows.length === 0) return [];
   const marks = await db
