@@ -1,4 +1,4 @@
-import { useId } from 'react';
+import { useId, useRef } from 'react';
 import { formatOhms } from '@/domain/quantities/format';
 import { parseResistance } from '@/domain/quantities/parse';
 import { Aligned } from './Aligned';
@@ -35,6 +35,7 @@ export function FieldCell({
   wrong: string | undefined;
 }) {
   const list = useId();
+  const opens = useRef(false);
   const edit = current ? grid.edit : null;
   const text = edit ? edit.text : row.cells[field];
   const name = `Row ${number}, ${COLUMN_NAMES[field]}`;
@@ -84,17 +85,11 @@ export function FieldCell({
       {...(edit ? {} : described)}
       onFocus={(event) => event.target === event.currentTarget && !current && grid.setCursor(at)}
       onPointerDown={(event) => {
-        if (edit || event.target instanceof HTMLInputElement) return;
-        const again = event.currentTarget === document.activeElement;
-        if (event.pointerType === 'mouse' && !again) return;
-        if (event.pointerType !== 'mouse') return;
-        event.preventDefault();
-        grid.open(at, true);
+        // A mouse opens the cell that the cursor is on already; a finger or pen opens any.
+        const here = event.currentTarget === document.activeElement;
+        opens.current = event.pointerType !== 'mouse' || here;
       }}
-      onClick={(event) => {
-        const { pointerType } = event.nativeEvent as PointerEvent;
-        if (!edit && pointerType !== 'mouse' && pointerType !== '') grid.open(at, true);
-      }}
+      onClick={() => !edit && opens.current && grid.open(at, true)}
     >
       {field === 'typed' ? (
         <span className="bench-reading">
