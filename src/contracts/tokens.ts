@@ -36,7 +36,8 @@ export const tokenRoutes = {
   create: defineRoute({
     method: 'POST',
     path: '/api/tokens',
-    summary: 'Make an API token. The token itself is answered once, here.',
+    summary:
+      'Make an API token; signed in, as a token may not. The token itself is answered once, here.',
     who: 'account.own',
     body: NewToken,
     bodyLimit: 4096,
@@ -47,7 +48,7 @@ export const tokenRoutes = {
   revoke: defineRoute({
     method: 'DELETE',
     path: '/api/tokens/{id}',
-    summary: 'Revoke a token of your own: it stops working at once.',
+    summary: 'Revoke a token of your own, signed in: it stops working at once.',
     who: 'account.own',
     params: z.object({ id: Id }),
     answer: null,

@@ -1,6 +1,6 @@
 /** What members of staff do to their own account. */
 import { and, eq, sql } from 'drizzle-orm';
-import { inTransaction, type Database, type Queryable } from '@/db/client';
+import { inTransaction, type Database } from '@/db/client';
 import { users } from '@/db/schema/people';
 import { record } from '../audit/commands';
 import type { Granted } from '../auth/actor';
@@ -15,21 +15,6 @@ import type { Runtime } from '../runtime';
 import { shopOf } from '../shop';
 
 export type Self = Granted<'account.own'>;
-
-/** What a person sees of their own account. */
-export async function readAccount(db: Queryable, id: number) {
-  const [row] = await db
-    .select({
-      name: users.name,
-      email: users.email,
-      role: users.role,
-      secondFactor: sql`(${users.totpSecret} IS NOT NULL)`.mapWith(Boolean),
-    })
-    .from(users)
-    .where(eq(users.id, id));
-  if (!row) throw new Error('The account of the person signed in is not there.');
-  return row;
-}
 
 /**
  * Whether this is the person's password, for changes that a borrowed screen must not make. Wrong ones count like wrong

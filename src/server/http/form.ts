@@ -9,6 +9,9 @@ export type FormResult<T> =
   | { ok: true; value: T; typed: Typed }
   | { ok: false; typed: Typed; errors: FieldError[]; reason: string; status: number };
 
+/** A form that was not taken: what the page shows again. */
+export type RefusedForm = Extract<FormResult<unknown>, { ok: false }>;
+
 /** Fields named `x[]` come as arrays under `x`; files are ignored. */
 export function typedOf(form: FormData): Typed {
   const typed: Typed = {};

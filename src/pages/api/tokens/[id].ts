@@ -1,4 +1,4 @@
-import { revokeToken } from '@/server/account/tokens';
+import { revokeToken } from '@/server/tokens/commands';
 import { tokenRoutes } from '@/contracts/tokens';
 import { serve } from '@/server/http/endpoint';
 import { done } from '@/server/refusal';

@@ -1,5 +1,6 @@
 import { tokenRoutes } from '@/contracts/tokens';
-import { createToken, listTokens } from '@/server/account/tokens';
+import { createToken } from '@/server/tokens/commands';
+import { listTokens } from '@/server/tokens/queries';
 import { serve } from '@/server/http/endpoint';
 import { done } from '@/server/refusal';
 

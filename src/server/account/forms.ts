@@ -1,18 +1,10 @@
 import { AccountForm } from '@/contracts/account';
-import { readFormAs, refusedForm, type Typed } from '../http/form';
-import { REFUSALS, type FieldError } from '../refusal';
+import { readFormAs, refusedForm, type RefusedForm } from '../http/form';
+import { REFUSALS } from '../refusal';
 import type { Runtime } from '../runtime';
 import { changePassword, rename, signOutEverywhere, type Self } from './commands';
 
 type About = { sessionCookie: string; requestId: string };
-/** What one's own page shows after a refusal. */
-export type Refused = {
-  ok: false;
-  typed: Typed;
-  errors: FieldError[];
-  reason: string;
-  status: number;
-};
 
 /** Does what a form of one's own page asks; answers with where to go. */
 export async function accountByForm(
@@ -21,7 +13,7 @@ export async function accountByForm(
   request: Request,
   { sessionCookie, requestId }: About,
   now: Date,
-): Promise<{ ok: true; location: string } | Refused> {
+): Promise<{ ok: true; location: string } | RefusedForm> {
   const form = await readFormAs(request, AccountForm);
   if (!form.ok) return form;
   const given = form.value;

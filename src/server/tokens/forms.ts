@@ -1,11 +1,10 @@
 import { TokenForm } from '@/contracts/account';
 import type { ApiToken } from '@/contracts/tokens';
-import { readFormAs, refusedForm } from '../http/form';
+import { readFormAs, refusedForm, type RefusedForm } from '../http/form';
 import { REFUSALS } from '../refusal';
 import type { Runtime } from '../runtime';
-import type { Refused } from './account-form';
-import type { Self } from './commands';
-import { createToken, revokeToken } from './tokens';
+import type { Self } from '../account/commands';
+import { createToken, revokeToken } from './commands';
 
 /** Makes a token, which the page shows this once, or revokes one, as the form asks. */
 export async function tokenByForm(
@@ -14,7 +13,7 @@ export async function tokenByForm(
   request: Request,
   requestId: string,
   now: Date,
-): Promise<{ ok: true; made: (ApiToken & { token: string }) | null } | Refused> {
+): Promise<{ ok: true; made: (ApiToken & { token: string }) | null } | RefusedForm> {
   const form = await readFormAs(request, TokenForm);
   if (!form.ok) return form;
   const given = form.value;

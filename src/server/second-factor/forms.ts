@@ -1,10 +1,9 @@
 import { SecondFactorForm } from '@/contracts/account';
-import { readFormAs, refusedForm } from '../http/form';
+import { readFormAs, refusedForm, type RefusedForm } from '../http/form';
 import { REFUSALS } from '../refusal';
 import type { Runtime } from '../runtime';
-import type { Refused } from './account-form';
-import type { Self } from './commands';
-import { turnOff, turnOn } from './second-factor';
+import type { Self } from '../account/commands';
+import { turnOff, turnOn } from './commands';
 
 /** Turns one's own second factor on or off, as the form asks. */
 export async function secondFactorByForm(
@@ -13,7 +12,7 @@ export async function secondFactorByForm(
   request: Request,
   about: { sessionCookie: string; requestId: string },
   now: Date,
-): Promise<{ ok: true } | Refused> {
+): Promise<{ ok: true } | RefusedForm> {
   const form = await readFormAs(request, SecondFactorForm);
   if (!form.ok) return form;
   const given = form.value;

@@ -1,6 +1,6 @@
 /** API tokens of one member of staff: made, shown once, revoked by their owner. */
-import { and, asc, count, eq, isNull } from 'drizzle-orm';
-import { inTransaction, type Database, type Queryable } from '@/db/client';
+import { and, count, eq } from 'drizzle-orm';
+import { inTransaction, type Database } from '@/db/client';
 import { apiTokens, users } from '@/db/schema/people';
 import type { ApiToken, NewToken } from '@/contracts/tokens';
 import { scopesFor } from '@/domain/people';
@@ -8,29 +8,12 @@ import { record } from '../audit/commands';
 import type { Granted } from '../auth/actor';
 import { hashSecret, newSecret } from '../auth/secrets';
 import { absent, done, refuse, refuseField, type Outcome } from '../refusal';
+import { inUse } from './queries';
 
 type Self = Granted<'account.own'>;
 
 /** Tokens one person may have in use. */
 export const MOST_TOKENS = 20;
-
-const inUse = (userId: number) => and(eq(apiTokens.userId, userId), isNull(apiTokens.revokedAt));
-
-export async function listTokens(db: Queryable, userId: number): Promise<ApiToken[]> {
-  const rows = await db
-    .select()
-    .from(apiTokens)
-    .where(inUse(userId))
-    .orderBy(asc(apiTokens.createdAt), asc(apiTokens.id));
-  return rows.map(({ id, name, hint, scopes, createdAt, lastUsedAt }) => ({
-    id,
-    name,
-    hint,
-    scopes,
-    createdAt: createdAt.toISOString(),
-    lastUsedAt: lastUsedAt?.toISOString() ?? null,
-  }));
-}
 
 /** Tokens are made and revoked by a person at a screen: a stolen token must not be able to make more of itself. */
 const bySession = (actor: Self) =>

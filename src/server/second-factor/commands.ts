@@ -8,7 +8,7 @@ import { seal, unseal } from '../auth/secrets';
 import { newTotpSecret, stepOfCode, totpAddress } from '../auth/totp';
 import { done, refuse, refuseField, type Outcome } from '../refusal';
 import type { Runtime } from '../runtime';
-import { confirmPassword, type Self } from './commands';
+import { confirmPassword, type Self } from '../account/commands';
 
 const USE = 'totp-offer';
 const LIFE_MS = 30 * 60_000;
