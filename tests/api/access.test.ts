@@ -10,22 +10,11 @@ import { startApp, type TestApp } from '../fixtures/app';
 import { ask, together, wholeAnswer } from '../fixtures/ask';
 import { refusedByPage, refusedByRoute, type Asker } from '../fixtures/askers';
 import { once, type Call, type Calls } from '../fixtures/calls';
-import { BENCH_CALLS } from '../fixtures/calls-bench';
-import { DESK_CALLS } from '../fixtures/calls-desk';
-import { FAULT_CALLS } from '../fixtures/calls-faults';
-import { PEOPLE_CALLS } from '../fixtures/calls-people';
+import { askerNamed, filled, nameOf, NAMED_ROUTES, ROUTE_CALLS } from '../fixtures/every-call';
 import { MARKED_SETTINGS, openMarkedShop, type MarkedShop } from '../fixtures/marked-shop';
 import { marksIn } from '../fixtures/marks';
 import { PAGE_CALLS } from '../fixtures/page-calls';
 import { endpointsOnDisk, pagesOnDisk } from '../fixtures/pages-on-disk';
-
-const ROUTE_CALLS: Record<string, Calls> = {
-  ...DESK_CALLS,
-  ...BENCH_CALLS,
-  ...FAULT_CALLS,
-  ...PEOPLE_CALLS,
-};
-const nameOf = ({ method, path }: { method: string; path: string }) => `${method} ${path}`;
 
 let app: TestApp;
 let shop: MarkedShop;
@@ -74,9 +63,6 @@ async function everyCall(
   return asked;
 }
 
-const filled = (path: string, params: Call['params'] = {}) =>
-  path.replaceAll(/[{[](\w+)[}\]]/g, (_, name: string) => encodeURIComponent(params[name] ?? '-'));
-
 async function answerOf({ method, path }: Subject, { asker, call }: Asked): Promise<Response> {
   const { params, query = '', headers, json, form } = call;
   const version = typeof call.version === 'function' ? await call.version() : call.version;
@@ -123,7 +109,7 @@ async function checkAll(subject: Subject, asked: Asked[]): Promise<void> {
   expect(found).toEqual([]);
 }
 
-test.each(ROUTES.map((route) => [nameOf(route), route] as const))(
+test.each(NAMED_ROUTES)(
   '%s answers each as their role and scopes say',
   async (name, { method, path, status, who }) => {
     const calls = ROUTE_CALLS[name] ?? once();
@@ -153,9 +139,7 @@ const changing = [
 ] as [string, string, string][];
 test.each(changing)('%s is not done for another site', async (name, method, path) => {
   const calls = ROUTE_CALLS[name] ?? PAGE_CALLS[path]?.post ?? once();
-  const owner = shop.askers.find((asker) => asker.name === 'owner') as Asker;
-  const customer = shop.askers.find((asker) => asker.name === 'customer') as Asker;
-  const asker = path.startsWith('/status') ? customer : owner;
+  const asker = askerNamed(shop, path.startsWith('/status') ? 'customer' : 'owner');
   const asked = (await calls(shop, asker, true)).map((call) => ({ asker, call }));
   const before = await shop.states();
   const signs: Record<string, string>[] = [
