@@ -4,14 +4,15 @@ import type { Queryable } from '@/db/client';
 import { ticketEvents, tickets } from '@/db/schema/tickets';
 import type { PhotoPhase } from '@/domain/photos/files';
 import type { Wear } from './board-drawing/bodies/brush';
+import { closeTogether } from './board-drawing/photograph';
 import { wearOf } from './board-drawing/wear';
 import type { DemoBoard, DemoScenario } from './content';
 
 /** One picture of a ticket's board. */
 export type Picture = {
   phase: PhotoPhase;
-  /** The whole board, or close up on the part that failed. */
-  close: boolean;
+  /** The parts it is close up on; none when it shows the whole board. */
+  close: string[];
   caption: string;
   shared: boolean;
   at: Date;
@@ -20,12 +21,14 @@ export type Picture = {
 export type Story = {
   number: string;
   board: DemoBoard;
-  faults: DemoScenario['faults'];
+  /** What failed, and how it looks. */
   wear: ReadonlyMap<string, Wear>;
   pictures: Picture[];
 };
 
 const MINUTE = 60_000;
+/** Parts this near to each other, mm, are in one close-up. */
+const NEAR = 30;
 /** Close-ups are for what can be seen; these faults leave a mark. */
 const SEEN = [
   'ptc-mov',
@@ -74,40 +77,43 @@ async function benchTickets(db: Queryable): Promise<Row[]> {
   return [...found.values()];
 }
 
-function picturesOf(row: Row, story: Pick<Story, 'faults' | 'wear'>, shared: boolean): Picture[] {
-  const refs = story.faults.map(({ ref }) => ref).join(' and ');
-  const cleaned = [...story.wear.values()].includes('dull');
-  const later = (from: Date, minutes: number) => new Date(from.getTime() + minutes * MINUTE);
-  const before: Picture[] = [
+const later = (from: Date, minutes: number) => new Date(from.getTime() + minutes * MINUTE);
+
+/** The whole board as it came, a close-up of what failed, and of the same place after the repair. */
+function picturesOf(
+  row: Row,
+  { board, wear }: Pick<Story, 'board' | 'wear'>,
+  shared: boolean,
+): Picture[] {
+  const groups = closeTogether(board, [...wear.keys()], NEAR);
+  const pictures: Picture[] = [
     {
       phase: 'before',
-      close: false,
+      close: [],
       caption: 'As it came in, nothing touched.',
       shared: false,
       at: later(row.begun, 12),
     },
-    {
-      phase: 'before',
-      close: true,
-      caption: `${refs} as found.`,
+    ...groups.map((close, i) => ({
+      phase: 'before' as const,
+      close,
+      caption: `${close.join(' and ')} as found.`,
       shared,
-      at: later(row.begun, 15),
-    },
+      at: later(row.begun, 15 + i),
+    })),
   ];
-  if (!row.checked) return before;
-  const done = later(row.checked, -18);
-  return [
-    ...before,
-    {
+  if (!row.checked) return pictures;
+  for (const [i, close] of groups.entries()) {
+    const cleaned = close.some((ref) => wear.get(ref) === 'dull');
+    pictures.push({
       phase: 'after',
-      close: true,
-      caption: cleaned
-        ? `${refs} cleaned and adjusted.`
-        : `${refs} replaced by new parts of the same ratings.`,
+      close,
+      caption: `${close.join(' and ')} ${cleaned ? 'cleaned and adjusted' : 'replaced by new parts of the same ratings'}.`,
       shared,
-      at: done,
-    },
-  ];
+      at: later(row.checked, i - 18),
+    });
+  }
+  return pictures;
 }
 
 /**
@@ -131,14 +137,13 @@ export async function photoStories(
     const wanted = stories.length % 2 === 0;
     const row = candidates.find((c) => (c.checked !== null) === wanted) ?? candidates[0];
     if (!row) continue;
-    const { faults } = scenario;
     const wear = new Map<string, Wear>();
-    for (const { ref, ohms } of faults) {
+    for (const { ref, ohms } of scenario.faults) {
       const part = board.parts.find((p) => p.ref === ref);
       if (part) wear.set(ref, wearOf(part.kind, ohms));
     }
-    const pictures = picturesOf(row, { faults, wear }, stories.length % 2 === 0);
-    stories.push({ number: row.number, board, faults, wear, pictures });
+    const pictures = picturesOf(row, { board, wear }, stories.length % 2 === 0);
+    stories.push({ number: row.number, board, wear, pictures });
   }
   return stories;
 }

@@ -86,10 +86,8 @@ async function boardPhoto(work: Work, board: DemoBoard, boardId: number, side: '
 }
 
 /** What is in front of the camera: after the repair the parts that failed are new ones. */
-function wearIn({ faults, wear }: Story, { phase }: Picture): ReadonlyMap<string, Wear> {
-  if (phase === 'before') return wear;
-  return new Map(faults.map(({ ref }) => [ref, 'fresh' as const]));
-}
+const wearIn = ({ wear }: Story, { phase }: Picture): ReadonlyMap<string, Wear> =>
+  phase === 'before' ? wear : new Map([...wear.keys()].map((ref) => [ref, 'fresh' as const]));
 
 const sideOf = (board: DemoBoard, ref: string): PhotoSide & ('front' | 'back') => {
   const part = board.parts.find((p) => p.ref === ref);
@@ -98,26 +96,23 @@ const sideOf = (board: DemoBoard, ref: string): PhotoSide & ('front' | 'back') =
 
 async function ticketPhoto(work: Work, story: Story, picture: Picture, place: number) {
   const { shop, actor } = work;
-  const { number, board, faults } = story;
+  const { number, board, wear } = story;
+  const refs = [...wear.keys()];
   const { phase, close, caption, shared, at } = picture;
-  const ref = faults[0]?.ref ?? '';
-  const side = sideOf(board, ref);
+  const side = sideOf(board, close[0] ?? refs[0] ?? '');
   const { jpeg, places } = await photographed({
     board,
     side,
     wear: wearIn(story, picture),
     ...SMALL,
-    close: close ? { ref, span: CLOSE_SPAN } : undefined,
+    close: close.length > 0 ? { refs: close, span: CLOSE_SPAN } : undefined,
     seed: Number(number.replace(/\D/g, '')) * 3 + place,
   });
   const fileName = `${number}-${phase}-${place + 1}.jpg`;
   const claim = { number, fileName, type: TYPE, bytes: jpeg.length, side, phase };
   const { photo } = must(await beginPhoto(shop, actor, claim, at), fileName);
   await deliver(work, photo, jpeg, at);
-  const seen = faults.flatMap((f) => {
-    const spot = places.get(f.ref);
-    return spot ? [[f.ref, spot] as const] : [];
-  });
+  const seen = [...places].filter(([ref]) => refs.includes(ref));
   await pin(work, photo, board, new Map(seen), at);
   const edit = { id: photo, version: 1, caption, ...(shared ? { shared } : {}) };
   must(await editPhoto(shop, actor, edit, at), fileName);

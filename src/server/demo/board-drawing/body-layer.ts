@@ -1,19 +1,23 @@
 /** The parts on the board, the low ones first, with the soot or the flux round those that were hurt or replaced. */
 import { chanceFrom, type Chance } from '../chance';
-import { at, num, plus, turned } from './geometry';
+import { at, num, plus, polyline, turned, type Point } from './geometry';
 import { chanceOf, brushFor, type Scene } from './scene';
 import { circle, ellipse, moved } from './bodies/brush';
 import { DISC_RISE } from './bodies/disc';
 import { drawBody, shadeOf } from './bodies/draw';
+import { transistorFoot } from './bodies/heatsink';
 import { padsOf } from './footprint';
 import { LAMP } from './paint';
 import type { Part } from './types';
 
 const SOOTY = new Set(['burnt', 'split', 'blown', 'cracked']);
 
-/** Where the body of a part is: a disc lies beside its leads. */
-export const bodyMiddle = (part: Part) =>
-  part.body.look === 'disc' ? plus(part.at, turned(at(0, DISC_RISE), part.turn)) : part.at;
+/** Where the body of a part is: a disc lies beside its leads, a transistor at the foot of its heatsink. */
+export function bodyMiddle({ body, at: p, turn }: Part): Point {
+  if (body.look === 'disc') return plus(p, turned(at(0, DISC_RISE), turn));
+  if (body.look === 'heatsink') return plus(p, turned(at(0, transistorFoot(body.height)), turn));
+  return p;
+}
 
 /** Smoke on the board round a part that burnt, blown away from it to one side. */
 function soot(scene: Scene, part: Part, strength: number): string {
@@ -107,7 +111,9 @@ export function marksLayer(scene: Scene): string {
     }
     if (wear === 'baked') out.push(soot(scene, part, 0.3));
   }
-  return out.join('');
+  const outline = `${polyline(scene.face.outline)}z`;
+  const id = scene.paints.define((id) => `<clipPath id="${id}"><path d="${outline}"/></clipPath>`);
+  return `<g clip-path="url(#${id})">${out.join('')}</g>`;
 }
 
 export function bodyLayer(scene: Scene): string {

@@ -11,8 +11,8 @@ export const plus = (p: Point, q: Point): Point => at(p.x + q.x, p.y + q.y);
 export const minus = (p: Point, q: Point): Point => at(p.x - q.x, p.y - q.y);
 export const times = (p: Point, k: number): Point => at(p.x * k, p.y * k);
 export const distance = (p: Point, q: Point): number => Math.hypot(p.x - q.x, p.y - q.y);
-export const between = (p: Point, q: Point, share = 0.5): Point =>
-  at(p.x + (q.x - p.x) * share, p.y + (q.y - p.y) * share);
+export const middleOf = (points: readonly Point[]): Point =>
+  times(points.reduce(plus, at(0, 0)), 1 / points.length);
 
 /** The point turned about the origin; degrees, clockwise as seen on the page. */
 export function turned({ x, y }: Point, degrees: number): Point {

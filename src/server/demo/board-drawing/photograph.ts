@@ -9,10 +9,11 @@ import { bodyLayer, bodyMiddle, contactLayer, marksLayer, shadowLayer } from './
 import { developed } from './develop';
 import { faceOf } from './face';
 import { framed, shareOf, svgOf, type Frame } from './frame';
-import { at, polyline, type Point, type Side } from './geometry';
+import { at, distance, middleOf, polyline, type Point, type Side } from './geometry';
 import { Paints } from './paint';
 import { planOf } from './plan';
 import type { Scene } from './scene';
+import type { Part } from './types';
 
 export type Shot = {
   board: DemoBoard;
@@ -22,8 +23,8 @@ export type Shot = {
   /** Pixels of the finished picture. */
   width: number;
   height: number;
-  /** What is in the middle and how many millimetres are seen across; the whole board when left out. */
-  close?: { ref: string; span: number } | undefined;
+  /** The parts in the middle and how many millimetres are seen across; the whole board when left out. */
+  close?: { refs: readonly string[]; span: number } | undefined;
   seed: number;
 };
 
@@ -42,11 +43,34 @@ function frameFor(shot: Shot, scene: Omit<Scene, 'frame' | 'paints'>): Frame {
   const [width, height] = [Math.round(shot.width * SENSOR), Math.round(shot.height * SENSOR)];
   const whole = Math.max(face.width, (face.height * width) / height) * chance.between(1.1, 1.15);
   const wander = () => chance.between(-1, 1) * whole * 0.008;
-  const part = shot.close && scene.plan.parts.find((p) => p.ref === shot.close?.ref);
-  const target = part ? face.flip(bodyMiddle(part)) : at(face.width / 2, face.height / 2);
+  const parts = scene.plan.parts.filter((part) => shot.close?.refs.includes(part.ref));
+  const target =
+    parts.length > 0
+      ? middleOf(parts.map((part) => face.flip(bodyMiddle(part))))
+      : at(face.width / 2, face.height / 2);
   const middle = at(target.x + wander(), target.y + wander());
-  const tilt = part ? chance.between(-7, 7) : chance.between(-2, 2);
+  const tilt = shot.close ? chance.between(-7, 7) : chance.between(-2, 2);
   return framed(width, height, middle, shot.close?.span ?? whole, tilt);
+}
+
+/** Parts that fit into one close-up `reach` mm across: those near the first, then those near the next, and so on. */
+export function closeTogether(
+  board: DemoBoard,
+  refs: readonly string[],
+  reach: number,
+): string[][] {
+  const parts = planOf(board).parts.filter((part) => refs.includes(part.ref));
+  const groups: Part[][] = [];
+  for (const ref of refs) {
+    const part = parts.find((p) => p.ref === ref);
+    if (!part) continue;
+    const near = groups.find((group) =>
+      group.every((other) => distance(bodyMiddle(other), bodyMiddle(part)) < reach),
+    );
+    if (near) near.push(part);
+    else groups.push([part]);
+  }
+  return groups.map((group) => group.map((part) => part.ref));
 }
 
 const raw = (svg: Buffer) => sharp(svg, { limitInputPixels: false }).ensureAlpha().raw().toBuffer();

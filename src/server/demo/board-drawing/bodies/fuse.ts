@@ -98,9 +98,9 @@ function blownCeramic(fuse: Fuse, brush: Brush): string {
   const r = diameter / 2;
   const crack = `M${num(inner * 0.2)} ${num(-r * 0.9)}L${num(inner * 0.28)} ${num(-r * 0.3)}L${num(inner * 0.12)} ${num(r * 0.1)}L${num(inner * 0.3)} ${num(r * 0.9)}`;
   return (
-    ellipse(inner, 0, length * 0.13, r * 1.05, brush.paints.patch('#1a120c', 0.92, 0.1)) +
-    ellipse(inner * 0.25, r * 0.1, length * 0.12, r * 0.8, brush.paints.patch('#4a3320', 0.6)) +
-    line(crack, '#1b1510', 0.2, 'stroke-opacity=".9"')
+    ellipse(inner * 0.86, 0, length * 0.15, r * 1.1, brush.paints.patch('#140d08', 0.96, 0.25)) +
+    ellipse(inner * 0.25, r * 0.1, length * 0.14, r * 0.9, brush.paints.patch('#3c2816', 0.75)) +
+    line(crack, '#17110c', 0.26)
   );
 }
 

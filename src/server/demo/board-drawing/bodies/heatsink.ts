@@ -27,6 +27,9 @@ export function drawBead(diameter: number, brush: Brush): string {
   ].join('');
 }
 
+/** How far below the middle of a heatsink this high its transistor sits. */
+export const transistorFoot = (height: number): number => height / 2 - 1.9;
+
 /** Black fins seen from above, and the transistor that is screwed to their face. */
 export function drawHeatsink({ width, height }: Heatsink, brush: Brush): string {
   const [w, h] = [width / 2, height / 2];
@@ -43,7 +46,7 @@ export function drawHeatsink({ width, height }: Heatsink, brush: Brush): string 
       ) + rect(x + 1, -h - 2, 0.5, height - 4, '#08090a')
     );
   }).join('');
-  const foot = h - 3.2;
+  const foot = transistorFoot(height) - 1.3;
   return [
     rect(-w, -h - 2, width, height - 2.4, '#121315'),
     moved(
@@ -58,8 +61,8 @@ export function drawHeatsink({ width, height }: Heatsink, brush: Brush): string 
     [-5.45, 0, 5.45]
       .map(
         (x) =>
-          rect(x - 0.55, foot + 2.5, 1.1, 6.4, '#9b9fa1') +
-          rect(x - 0.3, foot + 2.5, 0.3, 6.4, '#e5e8e9'),
+          rect(x - 0.55, foot + 2.5, 1.1, 3.2, '#9b9fa1') +
+          rect(x - 0.3, foot + 2.5, 0.3, 3.2, '#e5e8e9'),
       )
       .join(''),
     moved(

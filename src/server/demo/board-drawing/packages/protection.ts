@@ -67,9 +67,9 @@ export function disc(part: BoardPart, nets: Nets, floor: Floor): Package {
 export function clamp(value: string, nets: Nets): Package {
   if (!value.includes('pass')) return sot23('K6', nets);
   const pads = [
-    hole(-5.45, 10, nets[0], 2.8, 1.4),
-    hole(0, 10, 'BASE', 2.8, 1.4),
-    hole(5.45, 10, nets[1], 2.8, 1.4),
+    hole(-5.45, 11.4, nets[0], 2.8, 1.4),
+    hole(0, 11.4, 'BASE', 2.8, 1.4),
+    hole(5.45, 11.4, nets[1], 2.8, 1.4),
   ];
   return {
     body: { look: 'heatsink', width: 62, height: 18 },
