@@ -37,18 +37,41 @@ const codeOf = (error: unknown): string | undefined => {
 /** True when a write met a unique index. */
 export const isDuplicate = (error: unknown): boolean => codeOf(error) === 'ER_DUP_ENTRY';
 
-/** Runs a transaction again, a little later each time, when MariaDB chose it as the victim of a deadlock. */
+const isLocked = (error: unknown): boolean =>
+  ['ER_LOCK_DEADLOCK', 'ER_LOCK_WAIT_TIMEOUT'].includes(codeOf(error) ?? '');
+
+/** Transactions that are open. */
+const open = new WeakSet<object>();
+
+/** One try. A deadlock takes the savepoints along, and giving one back then fails: the deadlock is what is told. */
+async function attempt<T>(db: Queryable, work: (tx: Queryable) => Promise<T>): Promise<T> {
+  let why: unknown;
+  try {
+    return await db.transaction(async (tx) => {
+      open.add(tx);
+      return await work(tx as unknown as Queryable).catch((error: unknown) => {
+        why = error;
+        throw error;
+      });
+    });
+  } catch (error) {
+    throw why ?? error;
+  }
+}
+
+/**
+ * Runs a transaction again, a little later each time, when MariaDB chose it as the victim of a deadlock. Inside another
+ * transaction it is a part of that one, which then is run again as a whole.
+ */
 export async function inTransaction<T>(
   db: Queryable,
   work: (tx: Queryable) => Promise<T>,
 ): Promise<T> {
   for (let tries = 1; ; tries++) {
     try {
-      return await db.transaction((tx) => work(tx as unknown as Queryable));
+      return await attempt(db, work);
     } catch (error) {
-      const code = codeOf(error);
-      const again = code === 'ER_LOCK_DEADLOCK' || code === 'ER_LOCK_WAIT_TIMEOUT';
-      if (!again || tries === 6) throw error;
+      if (open.has(db) || !isLocked(error) || tries === 6) throw error;
       await pause(5 * 2 ** tries);
     }
   }

@@ -32,7 +32,11 @@ async function open(): Promise<Runtime> {
     db,
     pool,
     sessions: sessionKeeper(db, settings.secureCookies),
-    limits: makeLimits(pool, new URL(settings.databaseUrl).pathname.slice(1)),
+    // Counted on connections of its own: a limit may be asked from within a transaction that holds one.
+    limits: makeLimits(
+      openDatabase(settings.databaseUrl, 2).pool,
+      new URL(settings.databaseUrl).pathname.slice(1),
+    ),
     store,
     worker: null,
   };

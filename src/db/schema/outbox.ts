@@ -40,7 +40,7 @@ export const idempotency = mysqlTable(
     userId: ref().notNull(),
     key: varchar({ length: 80 }).notNull(),
     bodyHash: char({ length: 64 }).notNull(),
-    /** Null while the first request is still at work. */
+    /** Null only inside the transaction that does the work. */
     status: int(),
     answer: mediumtext(),
     etag: varchar({ length: 40 }),

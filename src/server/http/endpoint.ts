@@ -6,7 +6,7 @@ import type { Permission } from '@/domain/people';
 import { grant, type Actor, type CustomerActor, type Granted } from '../auth/actor';
 import { refuse, type Outcome, type Refusal } from '../refusal';
 import { runtime, type Runtime } from '../runtime';
-import { closeRepeatable, openRepeatable } from './idempotency';
+import { onceForKey } from './idempotency';
 import { fieldErrors, problemResponse } from './problem';
 import { readJson } from './read-body';
 
@@ -142,44 +142,24 @@ export function serve<R extends Route>(
     const ready = await answer(route, context, bodyRefusal);
     if (ready instanceof Response) return ready;
     const { call } = ready;
-    const key = route.repeatable ? call.request.headers.get('idempotency-key') : null;
-    const userId = (call.actor as Actor | null)?.id ?? 0;
-    if (key === null) {
-      const outcome = await handler(call as unknown as Call<R>);
+    const run = async (of: Call<Route>): Promise<Response> => {
+      const outcome = await handler(of as unknown as Call<R>);
       return outcome.ok
         ? toResponse(route, outcome.value as Answer<Route>)
         : problemResponse(outcome);
-    }
-    const { db, settings } = call.app;
-    const repeat = { userId, key, secret: settings.secret };
-    const opened = await openRepeatable(db, repeat, context.url.pathname, call.body, call.now);
-    if (opened !== 'first')
-      return 'ok' in opened
-        ? problemResponse(opened)
-        : new Response(opened.answer || null, {
-            status: opened.status,
-            headers: {
-              'idempotency-replayed': 'true',
-              ...(opened.answer ? { 'content-type': 'application/json' } : {}),
-              ...(opened.etag ? { etag: opened.etag } : {}),
-            },
-          });
-    let response: Response | null = null;
-    try {
-      const outcome = await handler(call as unknown as Call<R>);
-      response = outcome.ok
-        ? toResponse(route, outcome.value as Answer<Route>)
-        : problemResponse(outcome);
-      return response;
-    } finally {
-      const kept = response?.ok
-        ? {
-            status: response.status,
-            answer: await response.clone().text(),
-            etag: response.headers.get('etag'),
-          }
-        : null;
-      await closeRepeatable(db, repeat, kept);
-    }
+    };
+    const key = route.repeatable ? call.request.headers.get('idempotency-key') : null;
+    if (key === null) return run(call);
+    const { app, body, now } = call;
+    const userId = (call.actor as Actor | null)?.id ?? 0;
+    const response = await onceForKey(
+      app.db,
+      { userId, key, secret: app.settings.secret },
+      { path: context.url.pathname, body, now },
+      (db) => run({ ...call, app: { ...app, db, worker: null } }),
+    );
+    // What the work promised can be seen by the worker only now.
+    app.worker?.nudge();
+    return response;
   };
 }
