@@ -108,6 +108,32 @@ describe('what the answer says', () => {
     expect(answer.hypotheses[0]!.faults.map((f) => f.ref).sort()).toEqual(['RV1', 'RV2']);
   });
 
+  it.each([
+    [
+      ['RT1', 'OL'],
+      ['RV2', 1],
+      ['R2', 'OL'],
+    ],
+    [
+      ['RT1', 'OL'],
+      ['RV2', 1],
+      ['S1', 'OL'],
+    ],
+  ] as const)('finds three faults at once, %j with %j and %j', (...three) => {
+    const readings = readingsOf(
+      handheld,
+      three.map(([ref, ohms]) => ({ ref, ohms })),
+    );
+    const answer = diagnose({ network: handheld.network, readings, incident: 'mains-on-ohms' });
+    const refs = answer.hypotheses[0]!.faults.map((f) => f.ref).sort();
+    expect(refs).toEqual(three.map(([ref]) => ref).sort());
+    for (const [ref] of three) expect(standing(answer, ref), ref).toBe('suspect');
+    const all = diagnose({ network: handheld.network, readings, limit: 200, next: false });
+    const sum = all.healthy + all.hypotheses.reduce((total, h) => total + h.probability, 0);
+    expect(sum).toBeGreaterThan(0.95);
+    expect(sum).toBeLessThan(1 + 1e-9);
+  });
+
   it('lets confirmed faults of the board weigh in, and says how often', () => {
     const readings: Reading[] = [{ from: 'VIN', to: 'COM', position: 'volts', value: 'OL' }];
     const seen = [{ ref: 'S1', mode: 'open' as const, times: 7 }];

@@ -1,3 +1,4 @@
+import { faultsIn } from './hypothesis';
 import { groupsOf } from './told-apart';
 import { marginalsOf } from './marginals';
 import { observe } from './meter';
@@ -5,11 +6,10 @@ import { doubtsOf } from './doubts';
 import { byProbability, leadersOf } from './leaders';
 import { nextReadings } from './next';
 import type { Posterior } from './posterior';
-import { posteriorOf } from './posterior';
+import { rank } from './rank';
 import { reasonsOf } from './reasons';
 import { standingsOf } from './standings';
-import type { DiagnosisAnswer, DiagnosisInput, Fault, RankedHypothesis } from './types';
-import { openWorkshop } from './workshop';
+import type { DiagnosisAnswer, DiagnosisInput, RankedHypothesis } from './types';
 
 export const DEFAULT_LIMIT = 20;
 
@@ -22,14 +22,13 @@ export const DEFAULT_LIMIT = 20;
  * @throws RangeError when a reading names a net that is not in the network.
  */
 export function diagnose(input: DiagnosisInput): DiagnosisAnswer {
-  const workshop = openWorkshop(
-    input.network,
-    input.readings,
-    input.readings.map(observe),
-    input.incident ?? 'unknown',
-    input.seen,
-  );
-  const posterior = posteriorOf(workshop);
+  const posterior = rank({
+    network: input.network,
+    probes: input.readings,
+    observations: input.readings.map(observe),
+    incident: input.incident ?? 'unknown',
+    seen: input.seen ?? [],
+  });
   const marginals = marginalsOf(posterior);
   const parts = standingsOf(posterior, marginals);
   const groups = groupsOf(posterior, marginals, parts);
@@ -42,24 +41,20 @@ export function diagnose(input: DiagnosisInput): DiagnosisAnswer {
     parts,
     groups,
     next: input.next === false ? [] : nextReadings(posterior, order, input.readings, parts),
-    doubtful: doubtsOf(input.network, input.readings, workshop, leaders),
-    reasons: reasonsOf(input, workshop, leaders, parts, groups),
+    doubtful: doubtsOf(input.network, input.readings, leaders),
+    reasons: reasonsOf(input, leaders, parts, groups),
   };
 }
 
 /** The likeliest faulty hypotheses, best first. */
-function ranked(posterior: Posterior, order: readonly number[], limit: number): RankedHypothesis[] {
-  const { scene } = posterior.workshop;
-  const faulty = order.filter((index) => index !== 0);
-  return faulty.slice(0, limit).map((index) => {
-    const { j, k } = posterior.hypotheses[index]!;
-    const faults: Fault[] = [j, k]
-      .filter((m) => m >= 0)
-      .sort((a, b) => a - b)
-      .map((m) => ({
-        ref: scene.network.parts[scene.modes[m]!.part]!.ref,
-        mode: scene.modes[m]!.mode,
-      }));
-    return { faults, probability: posterior.probability[index]! };
-  });
+function ranked(
+  { plain, hypotheses, probability }: Posterior,
+  order: readonly number[],
+  limit: number,
+): RankedHypothesis[] {
+  const faulty = order.filter((index) => index !== 0).slice(0, limit);
+  return faulty.map((index) => ({
+    faults: faultsIn(plain.scene, hypotheses[index]!),
+    probability: probability[index]!,
+  }));
 }

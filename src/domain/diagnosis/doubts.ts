@@ -1,10 +1,8 @@
 import type { Network } from '@/domain/network/types';
 import type { Leader } from './leaders';
-import { forcedParts } from './leaders';
 import { predictUnder } from './predict';
 import type { DoubtfulReading, Reading } from './types';
 import { measured, place, predicted } from './words';
-import type { Workshop } from './workshop';
 
 /** A reading is doubtful when it is a misprobe with more than this chance, over the leading hypotheses. */
 const DOUBTFUL = 0.5;
@@ -13,7 +11,6 @@ const DOUBTFUL = 0.5;
 export function doubtsOf(
   network: Network,
   readings: readonly Reading[],
-  workshop: Workshop,
   leaders: readonly Leader[],
 ): DoubtfulReading[] {
   const weight = leaders.reduce((sum, leader) => sum + leader.probability, 0);
@@ -21,7 +18,7 @@ export function doubtsOf(
     const doubt = leaders.reduce((sum, l) => sum + l.probability * l.doubt[index]!, 0);
     if (weight === 0 || doubt / weight <= DOUBTFUL) return [];
     const best = leaders.find((leader) => leader.doubt[index]! > DOUBTFUL) ?? leaders[0]!;
-    const [shown] = predictUnder(network, forcedParts(workshop, best), [reading]);
+    const [shown] = predictUnder(network, best.forced, [reading]);
     const reason =
       `Measure ${place(reading)} again: ${measured(reading)} fits no likely fault beside the other ` +
       `readings, which make it ${predicted(shown!)}.`;

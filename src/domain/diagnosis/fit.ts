@@ -1,5 +1,5 @@
 import { FINE } from './grid';
-import type { Hypothesis } from './pairs';
+import type { Hypothesis } from './hypothesis';
 import { screen } from './screen';
 import { setTrial } from './trial';
 import { weighed } from './weigh';

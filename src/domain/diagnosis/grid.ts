@@ -9,13 +9,13 @@ export interface Fineness {
   readonly most: number;
 }
 
-/** For screening pairs, for the final weight of pairs, and for that of singles. */
+/** For screening pairs, for pairs of two widely seen modes, and for the final weight of all others. */
 export const COARSE: Fineness = { step: 0.8, most: 8 };
 export const MEDIUM: Fineness = { step: 0.55, most: 10 };
 export const FINE: Fineness = { step: 0.4, most: 16 };
 
 /** Width of a node's log-normal as a fraction of the step between nodes: smooth, and hardly blurred. */
-const KERNEL = 0.4;
+const KERNEL = 0.45;
 /** A shift of the reading below this many of the meter's standard deviations moves nothing. */
 const UNSEEN = 0.1;
 /** At one node an open part is taken as good as gone, ln Ω. */
@@ -41,7 +41,11 @@ export function nodesFor(
   const { corners } = trial;
   corner(scene, evidence, trial, j, k, 0, 0);
   corner(scene, evidence, trial, j, k, 1, 1);
-  if (k < 0) return [cut(scene, j, widest(evidence, corners, 0, 3), fineness), NONE];
+  const width = widest(evidence, corners, 0, 3);
+  if (k < 0) return [cut(scene, j, width, fineness), NONE];
+  // Between its ends a reading only rises: where both together move it little, so does each.
+  if (width <= fineness.step)
+    return [cut(scene, j, width, fineness), cut(scene, k, width, fineness)];
   corner(scene, evidence, trial, j, k, 1, 0);
   corner(scene, evidence, trial, j, k, 0, 1);
   const widthJ = Math.max(widest(evidence, corners, 0, 1), widest(evidence, corners, 2, 3));
@@ -80,6 +84,19 @@ function widest(evidence: Evidence, corners: Float64Array, from: number, to: num
     if (step > width && step > UNSEEN * deviation[r]!) width = step;
   }
   return width;
+}
+
+/** True when the single mode cut last shows what the healthy network shows, over all its range. */
+export function looksHealthy(evidence: Evidence, { corners }: Trial): boolean {
+  const { count, healthy, deviation, over, y } = evidence;
+  for (let r = 0; r < count; r++) {
+    const top = over[r] === 1 ? y[r]! + 1 : Infinity;
+    const base = Math.min(healthy[r]!, top);
+    const noticed = UNSEEN * deviation[r]!;
+    for (const at of [r, 3 * count + r])
+      if (corners[at] !== base && !(Math.abs(corners[at]! - base) <= noticed)) return false;
+  }
+  return true;
 }
 
 function cut(scene: Scene, mode: number, width: number, fineness: Fineness): Nodes {

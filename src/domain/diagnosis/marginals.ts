@@ -10,11 +10,12 @@ export interface Marginals {
 }
 
 export function marginalsOf(posterior: Posterior): Marginals {
-  const { scene, priors } = posterior.workshop;
+  const { scene, priors } = posterior.plain;
   const after = new Float64Array(scene.modes.length);
   let entropy = 0;
-  posterior.hypotheses.forEach(({ j, k }, index) => {
+  posterior.hypotheses.forEach(({ given, j, k }, index) => {
     const p = posterior.probability[index]!;
+    if (given >= 0) after[given]! += p;
     if (j >= 0) after[j]! += p;
     if (k >= 0) after[k]! += p;
     if (p > 0) entropy -= p * Math.log2(p);

@@ -11,96 +11,107 @@ import { boundAt } from './tolerance-bound';
  * and with both at the high ends: a value outside counts by its distance, one inside as if met exactly.
  */
 export interface PairBounds {
+  /** Takes up two parts by one mode each; what follows is asked of their modes that bridge alike. */
+  pair(j: number, k: number): void;
   /** True when no reading depends on both: their gains on the healthy network then add up. */
-  apart(j: number, k: number): boolean;
+  apart(): boolean;
   /** ln likelihood bound of modes j and k, giving up once it falls below `least`. */
   bound(j: number, k: number, least: number): number;
-  /** True when the pair bounded last moves no reading that depends on both: gains add up here as well. */
+  /** True when the modes bounded last move no reading that depends on both: gains add up here as well. */
   still(): boolean;
 }
 
 export function pairBounds(scene: Scene, evidence: Evidence, reach: Reach): PairBounds {
   const settings = scene.settings.length;
   const row = scene.parts + 1;
-  const { count, toPart, ohms } = evidence;
-  const ends = endsOf(scene);
+  const { count, toPart, ohms, setting } = evidence;
+  const { delta, factor } = endsOf(scene);
   const weigh = weigher(evidence);
-  const alone = scene.modes.map((_, m) => aloneOf(scene, evidence, ends, weigh, m));
+  const { inside } = weigh;
+  const alone = aloneOf(scene, evidence, { delta, factor }, weigh);
   const healthy = Float64Array.from(ohms, (base, r) => weigh.between(r, base, base));
   const total = healthy.reduce((sum, one) => sum + one, 0);
-  const gain = alone.map((own) => own.reduce((sum, one, r) => sum + one - healthy[r]!, 0));
+  const gain = Float64Array.from(scene.modes, (_, m) =>
+    healthy.reduce((sum, one, r) => sum + alone[m * count + r]! - one, 0),
+  );
   const both = new Int32Array(2);
-  const k11 = new Float64Array(settings * 2);
-  const k12 = new Float64Array(settings * 2);
-  const k22 = new Float64Array(settings * 2);
-  const ready = new Uint8Array(settings);
-
+  // The readings that depend on both parts, ordered by setting, and z_j², z_j·z_k, z_k² of each.
+  const reading = new Int32Array(count);
+  const squares = new Float64Array(count * 3);
+  const between = new Float64Array(settings);
+  const byType = Int32Array.from(
+    [...Array(count).keys()].sort((a, b) => setting[a]! - setting[b]!),
+  );
+  let shared = 0;
   let unmoved = false;
-  const together = (s: number, j: number, k: number): void => {
-    const z = scene.settings[s]!.between[scene.modes[j]!.part * row + scene.modes[k]!.part]!;
-    for (let end = 0; end < 2; end++) {
-      const at = (j * settings + s) * 2 + end;
-      const kt = (k * settings + s) * 2 + end;
-      const dj = ends.delta[at]!;
-      const dk = ends.delta[kt]!;
-      const fj = ends.factor[at]!;
-      const fk = ends.factor[kt]!;
-      const inverse = 1 / Math.max(fj * fk - dj * dk * z * z, 1e-14 * fj * fk);
-      const out = s * 2 + end;
-      k11[out] = dj * fk * inverse;
-      k12[out] = -2 * dj * dk * z * inverse;
-      k22[out] = dk * fj * inverse;
+
+  const pair = (j: number, k: number): void => {
+    reachBoth(scene, reach, j, k, both);
+    const partJ = scene.modes[j]!.part;
+    const partK = scene.modes[k]!.part;
+    shared = 0;
+    if (both[0] === 0 && both[1] === 0) return;
+    for (let s = 0; s < settings; s++)
+      between[s] = scene.settings[s]!.between[partJ * row + partK]!;
+    for (let i = 0; i < count; i++) {
+      const r = byType[i]!;
+      const word = r < 30 ? both[0]! : both[1]!;
+      if ((word & (1 << (r < 30 ? r : r - 30))) === 0) continue;
+      const zj = toPart[r * row + partJ]!;
+      const zk = toPart[r * row + partK]!;
+      squares[shared * 3] = zj * zj;
+      squares[shared * 3 + 1] = -2 * zj * zk;
+      squares[shared * 3 + 2] = zk * zk;
+      reading[shared++] = r;
     }
   };
 
   const bound = (j: number, k: number, least: number): number => {
-    const aloneJ = alone[j]!;
-    const aloneK = alone[k]!;
     let sum = total + gain[j]! + gain[k]!;
     unmoved = true;
-    for (let word = 0; word < 2; word++)
-      for (let bits = both[word]!; bits !== 0; bits &= bits - 1) {
-        const r = 31 - Math.clz32(bits & -bits) + 30 * word;
-        if (r < count) sum += weigh.inside[r]! - aloneJ[r]! - aloneK[r]! + healthy[r]!;
-      }
+    for (let i = 0; i < shared; i++) {
+      const r = reading[i]!;
+      sum += inside[r]! - alone[j * count + r]! - alone[k * count + r]! + healthy[r]!;
+    }
     if (sum < least) return sum;
-    const partJ = scene.modes[j]!.part;
-    const partK = scene.modes[k]!.part;
-    ready.fill(0);
-    for (let word = 0; word < 2; word++)
-      for (let bits = both[word]!; bits !== 0; bits &= bits - 1) {
-        const r = 31 - Math.clz32(bits & -bits) + 30 * word;
-        if (r >= count) continue;
-        const s = evidence.setting[r]!;
-        if (ready[s] === 0) together(s, j, k);
-        ready[s] = 1;
-        const zj = toPart[r * row + partJ]!;
-        const zk = toPart[r * row + partK]!;
-        const jj = zj * zj;
-        const jk = zj * zk;
-        const kk = zk * zk;
-        const at = s * 2;
-        const base = ohms[r]!;
-        const low = base - (k11[at]! * jj + k12[at]! * jk + k22[at]! * kk);
-        const high = base - (k11[at + 1]! * jj + k12[at + 1]! * jk + k22[at + 1]! * kk);
-        sum += weigh.between(r, low, high) - weigh.inside[r]!;
-        if (sum < least) return sum;
-        if (unmoved && weigh.moves(r, low, high, base)) unmoved = false;
+    let s = -1;
+    let [lowJ, lowM, lowK, highJ, highM, highK] = [0, 0, 0, 0, 0, 0];
+    for (let i = 0; i < shared; i++) {
+      const r = reading[i]!;
+      if (setting[r] !== s) {
+        s = setting[r]!;
+        const z = between[s]!;
+        const at = (j * settings + s) * 2;
+        const kt = (k * settings + s) * 2;
+        const low = 1 / determinant(delta[at]!, factor[at]!, delta[kt]!, factor[kt]!, z);
+        lowJ = delta[at]! * factor[kt]! * low;
+        lowM = delta[at]! * delta[kt]! * z * low;
+        lowK = delta[kt]! * factor[at]! * low;
+        const [dj, fj] = [delta[at + 1]!, factor[at + 1]!];
+        const [dk, fk] = [delta[kt + 1]!, factor[kt + 1]!];
+        const high = 1 / determinant(dj, fj, dk, fk, z);
+        highJ = dj * fk * high;
+        highM = dj * dk * z * high;
+        highK = dk * fj * high;
       }
+      const jj = squares[i * 3]!;
+      const jk = squares[i * 3 + 1]!;
+      const kk = squares[i * 3 + 2]!;
+      const base = ohms[r]!;
+      const low = base - (lowJ * jj + lowM * jk + lowK * kk);
+      const high = base - (highJ * jj + highM * jk + highK * kk);
+      sum += weigh.between(r, low, high) - inside[r]!;
+      if (sum < least) return sum;
+      if (unmoved && weigh.moves(r, low, high, base)) unmoved = false;
+    }
     return sum;
   };
-  const apart = (j: number, k: number): boolean => {
-    reachBoth(scene, reach, j, k, both);
-    return both[0] === 0 && both[1] === 0;
-  };
-  return {
-    apart,
-    bound: (j, k, least) => {
-      reachBoth(scene, reach, j, k, both);
-      return bound(j, k, least);
-    },
-    still: () => unmoved,
-  };
+  return { pair, apart: () => shared === 0, bound, still: () => unmoved };
+}
+
+/** Positive in exact arithmetic; two opens that cut the circuit leave it to rounding. */
+function determinant(dj: number, fj: number, dk: number, fk: number, z: number): number {
+  return Math.max(fj * fk - dj * dk * z * z, 1e-14 * fj * fk);
 }
 
 /** Change of conductance δ and 1 + δ·R at both ends of every mode, per setting. */
@@ -127,25 +138,21 @@ function endsOf(scene: Scene): Ends {
   return { delta, factor };
 }
 
-/** Weights of every reading with this mode alone. */
-function aloneOf(
-  scene: Scene,
-  evidence: Evidence,
-  ends: Ends,
-  weigh: Weigher,
-  m: number,
-): Float64Array {
+/** Weights of every reading with each mode alone, mode by mode. */
+function aloneOf(scene: Scene, evidence: Evidence, ends: Ends, weigh: Weigher): Float64Array {
   const settings = scene.settings.length;
-  const { part } = scene.modes[m]!;
-  const own = new Float64Array(evidence.count);
-  for (let r = 0; r < evidence.count; r++) {
-    const at = (m * settings + evidence.setting[r]!) * 2;
-    const squared = evidence.toPart[r * (scene.parts + 1) + part]! ** 2;
-    const low = evidence.ohms[r]! - (ends.delta[at]! * squared) / ends.factor[at]!;
-    const high = evidence.ohms[r]! - (ends.delta[at + 1]! * squared) / ends.factor[at + 1]!;
-    own[r] = weigh.between(r, low, high);
-  }
-  return own;
+  const { count } = evidence;
+  const alone = new Float64Array(scene.modes.length * count);
+  scene.modes.forEach(({ part }, m) => {
+    for (let r = 0; r < count; r++) {
+      const at = (m * settings + evidence.setting[r]!) * 2;
+      const squared = evidence.toPart[r * (scene.parts + 1) + part]! ** 2;
+      const low = evidence.ohms[r]! - (ends.delta[at]! * squared) / ends.factor[at]!;
+      const high = evidence.ohms[r]! - (ends.delta[at + 1]! * squared) / ends.factor[at + 1]!;
+      alone[m * count + r] = weigh.between(r, low, high);
+    }
+  });
+  return alone;
 }
 
 /** Weighs a reading against all it may show. */

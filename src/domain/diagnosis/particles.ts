@@ -1,5 +1,6 @@
 import { COARSE, nodesFor } from './grid';
 import type { Posterior } from './posterior';
+import { workshopOf } from './posterior';
 import { screen } from './screen';
 import { setTrial } from './trial';
 
@@ -22,7 +23,11 @@ const SLIGHT = 0.1;
 /** The likeliest hypotheses as particles; the weights sum to 1. */
 export function particlesOf(posterior: Posterior, order: readonly number[]): Particle[] {
   const particles: Particle[] = [];
-  order.slice(0, MOST_HYPOTHESES).forEach((index, hypothesis) => {
+  // With a certain fault built in, only what includes it can be set up beside the others.
+  const usable = order.filter(
+    (index) => workshopOf(posterior, posterior.hypotheses[index]!) === posterior.workshop,
+  );
+  usable.slice(0, MOST_HYPOTHESES).forEach((index, hypothesis) => {
     const { j, k } = posterior.hypotheses[index]!;
     const probability = posterior.probability[index]!;
     const nodes = likelyNodes(posterior, j, k);

@@ -13,8 +13,9 @@ const MOST_LIKELY = 0.6;
 export interface Priors {
   /** Odds of each single fault against its part being sound. */
   readonly odds: Float64Array;
-  /** Shared-cause factor of two parts, part by part, row by row. */
+  /** Shared-cause factor of two parts, part by part, row by row, rows of `parts`. */
   readonly shared: Float64Array;
+  readonly parts: number;
   /** Odds of the healthy network on the same scale as a product of fault odds. */
   readonly healthy: number;
   /** Sum of all hypotheses' odds: divide by it for a probability. */
@@ -44,7 +45,7 @@ export function priorsOf(
   }
   const prior = HEALTHY_PRIOR[incident];
   const healthy = (faulty * prior) / (1 - prior);
-  return { odds, shared, healthy, total: healthy + faulty };
+  return { odds, shared, parts: network.parts.length, healthy, total: healthy + faulty };
 }
 
 function published(network: Network, modes: readonly PartMode[], incident: Incident): Float64Array {

@@ -3,11 +3,9 @@ import type { Network, NetworkPart, Ohms } from '@/domain/network/types';
 import { defaultTolerance, healthyFloor } from '@/domain/parts/defaults';
 import { predict, predictUnder } from './predict';
 import type { Leader } from './leaders';
-import { forcedParts } from './leaders';
 import { observe } from './meter';
-import type { DiagnosisInput, Fault, PartStanding, Prediction, Reading } from './types';
+import type { DiagnosisInput, PartStanding, Prediction, Reading } from './types';
 import { expected, faultNames, list, measured, place, predicted } from './words';
-import type { Workshop } from './workshop';
 
 /** Readings quoted for the leading hypothesis. */
 const QUOTED = 3;
@@ -25,7 +23,6 @@ const TELLING = 2;
  */
 export function reasonsOf(
   input: DiagnosisInput,
-  workshop: Workshop,
   leaders: readonly Leader[],
   parts: readonly PartStanding[],
   groups: readonly (readonly string[])[],
@@ -36,10 +33,10 @@ export function reasonsOf(
   const healthy = predict(network, readings);
   const lead = leaders[0]!;
   const said = [
-    ...leading(network, readings, workshop, lead, healthy),
+    ...leading(network, readings, lead, healthy),
     ...proven(network, readings),
     ...alikeSentences(groups),
-    ...seenSentences(input, workshop, lead),
+    ...seenSentences(input, lead),
     ...standingSentences(parts),
   ];
   return said;
@@ -57,11 +54,10 @@ function distance(reading: Reading, ohms: Ohms, band: number): number {
 function leading(
   network: Network,
   readings: readonly Reading[],
-  workshop: Workshop,
   lead: Leader,
   healthy: readonly Prediction[],
 ): string[] {
-  const faults = forcedParts(workshop, lead);
+  const faults = lead.forced;
   const against = readings.map((reading, r) =>
     distance(reading, healthy[r]!.ohms, healthy[r]!.band),
   );
@@ -74,7 +70,7 @@ function leading(
         ];
   }
   const under = predictUnder(network, faults, readings);
-  const names = faultNames(faults as Fault[]);
+  const names = faultNames(lead.faults);
   const telling = readings
     .map((reading, r) => ({ reading, r, left: distance(reading, under[r]!, LEFT_BAND) }))
     .map((one) => ({ ...one, gain: against[one.r]! - one.left }))
@@ -124,8 +120,8 @@ function alikeSentences(groups: readonly (readonly string[])[]): string[] {
   );
 }
 
-function seenSentences(input: DiagnosisInput, workshop: Workshop, lead: Leader): string[] {
-  return forcedParts(workshop, lead).flatMap(({ ref, mode }) => {
+function seenSentences(input: DiagnosisInput, lead: Leader): string[] {
+  return lead.forced.flatMap(({ ref, mode }) => {
     const times = (input.seen ?? [])
       .filter((one) => one.ref === ref && one.mode === mode)
       .reduce((sum, one) => sum + one.times, 0);

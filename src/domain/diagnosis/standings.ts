@@ -1,9 +1,11 @@
 import type { Standing } from '@/domain/parts/kinds';
+import { modesIn } from './hypothesis';
 import type { Marginals } from './marginals';
 import { ofPart } from './marginals';
 import type { Posterior } from './posterior';
 import { setTrial, trialOhms } from './trial';
 import type { PartStanding } from './types';
+import type { Workshop } from './workshop';
 
 /** A reading notices a fault that moves it by this many standard deviations of the meter. */
 const NOTICED = 2;
@@ -35,10 +37,20 @@ function standingOf(after: number, before: number, seen: boolean): Standing {
   return after < CUT * before ? 'cleared' : 'untouched';
 }
 
-/** 1 for every part of which some mode, on its own, would move some reading by more than the meter's doubt. */
-function seenParts({ workshop, hypotheses, probability }: Posterior): Uint8Array {
-  const { scene, evidence, trial } = workshop;
-  const seen = new Uint8Array(scene.parts);
+/** 1 for every part of which some mode would move some reading by more than the meter's doubt. */
+function seenParts(posterior: Posterior): Uint8Array {
+  const { plain, deep, hypotheses, probability } = posterior;
+  const seen = new Uint8Array(plain.scene.parts);
+  for (const one of [plain, ...deep]) markMoving(one, seen);
+  // A fault that only shows beside another counts once the two together are likely.
+  hypotheses.forEach((hypothesis, index) => {
+    if (probability[index]! < LIKELY) return;
+    for (const m of modesIn(hypothesis)) seen[plain.scene.modes[m]!.part] = 1;
+  });
+  return seen;
+}
+
+function markMoving({ scene, evidence, trial }: Workshop, seen: Uint8Array): void {
   scene.modes.forEach((mode, m) => {
     for (const end of [mode.low, mode.high]) {
       if (seen[mode.part] === 1) return;
@@ -51,10 +63,4 @@ function seenParts({ workshop, hypotheses, probability }: Posterior): Uint8Array
       }
     }
   });
-  // A fault that only shows beside another counts once the two together are likely.
-  hypotheses.forEach(({ j, k }, index) => {
-    if (probability[index]! < LIKELY) return;
-    for (const m of [j, k]) if (m >= 0) seen[scene.modes[m]!.part] = 1;
-  });
-  return seen;
 }

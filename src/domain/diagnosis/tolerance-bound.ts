@@ -1,6 +1,6 @@
 import type { Scene } from './scene';
 
-const STEP = 0.25;
+const STEP = 0.5;
 const LOW = Math.log(1e-6);
 const SIZE = Math.ceil((Math.log(1e15) - LOW) / STEP) + 1;
 

@@ -1,5 +1,5 @@
 import type { Fineness, Nodes } from './grid';
-import { nodesFor } from './grid';
+import { MEDIUM, nodesFor } from './grid';
 import type { Joint } from './joint';
 import { jointLikelihood, predictJoint } from './joint';
 import type { Evidence } from './evidence';
@@ -48,6 +48,9 @@ export function screened(
   );
 }
 
+/** A pair that would take more nodes is cut less finely: a single fault is never. */
+const MOST_NODES = 40;
+
 /** What the full covariance says of a hypothesis. */
 export interface Weighed {
   readonly logLikelihood: number;
@@ -67,8 +70,10 @@ export function weighed(
   fineness: Fineness,
 ): Weighed {
   const none: Nodes = { at: [0], spread: 0 };
-  const nodes: [Nodes, Nodes] =
+  let nodes: [Nodes, Nodes] =
     j < 0 ? [none, none] : nodesFor(scene, evidence, trial, j, k, fineness);
+  if (nodes[0].at.length * nodes[1].at.length > MOST_NODES)
+    nodes = nodesFor(scene, evidence, trial, j, k, MEDIUM);
   let best = { value: -Infinity, lnJ: 0, lnK: 0 };
   const logLikelihood = overNodes(scene, trial, j, k, nodes, (lnJ, lnK) => {
     predictJoint(scene, evidence, trial, nodes[0].spread, nodes[1].spread, joint);
