@@ -112,7 +112,7 @@ describe('what the answer says', () => {
     [
       ['RT1', 'OL'],
       ['RV2', 1],
-      ['R2', 'OL'],
+      ['R1', 'OL'],
     ],
     [
       ['RT1', 'OL'],
