@@ -66,6 +66,16 @@ describe('the sentence of a part', () => {
     );
   });
 
+  it('quotes a few per cent where the tolerances leave less', () => {
+    const low = taken(2, { from: 'Q', to: 'COM', value: 955_000, resolution: 1000 });
+    const judged = judge([low]);
+    const [first] = judged.diagnosis?.hypotheses[0]?.faults ?? [];
+    expect(first?.ref).toMatch(/^(R1|R2|RV1)$/);
+    expect(saidOf([low], first?.ref ?? '')?.words).toMatch(
+      /^Q to COM reads 955 kΩ; healthy it would be \S+ [kM]Ω\./,
+    );
+  });
+
   it('is missing for parts of which no reading tells', () => {
     const judged = judge([taken(2, { from: 'Q', to: 'COM', value: 9e5 })]);
     const untouched = judged.diagnosis?.parts.filter(({ standing }) => standing === 'untouched');

@@ -1,6 +1,6 @@
 /** What a bench sheet says: the network's diagnosis, what was expected of each reading, parts judged alone. */
 import type { DiagnosisAnswer, Reading } from '../diagnosis/types';
-import { diagnose } from '../diagnosis/diagnose';
+import { diagnoseClosely } from '../diagnosis/diagnose';
 import { predict } from '../diagnosis/predict';
 import type { Ohms } from '../network/types';
 import { violations } from '../network/validate';
@@ -103,13 +103,14 @@ export function judgeSheet(
     return found;
   }
   const taken = usable.map((u) => u.reading);
-  found.diagnosis = diagnose({ network, readings: taken, incident });
+  const { answer, leaders } = diagnoseClosely({ network, readings: taken, incident });
+  found.diagnosis = answer;
   found.expected = predict(network, taken).map((p, i) => ({
     reading: usable[i]?.id ?? 0,
     ohms: p.ohms,
     band: p.band,
   }));
-  const say = sentencesOn({ positions, parts }, sheet, found);
+  const say = sentencesOn({ positions, parts }, sheet, found, leaders);
   found.said = found.diagnosis.parts
     .filter(({ standing }) => standing !== 'untouched')
     .map((part) => ({ ref: part.ref, ...say(part) }));

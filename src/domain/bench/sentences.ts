@@ -1,4 +1,5 @@
 /** What the readings say, one sentence a part, the measured value beside the predicted one. */
+import type { Leader } from '../diagnosis/leaders';
 import { predictUnder } from '../diagnosis/predict';
 import type { DiagnosisAnswer, Fault, PartStanding } from '../diagnosis/types';
 import type { ForcedPart, Network, Ohms } from '../network/types';
@@ -16,9 +17,13 @@ import type { Points, SheetBoard, SheetReading } from './types';
 /** A sentence and the reading it quotes. */
 export type Said = { words: string; reading: number | null };
 
-type Quoted = { reading: SheetReading; taken: Taken };
-/** A quoted reading must be closer to the fault than to its absence by this many factors of e. */
+type Quoted = { reading: SheetReading; taken: Taken; telling: number };
+/**
+ * A quoted reading must be closer to the fault than to its absence by this many factors of e; by half of what the
+ * healthy board's tolerances leave where they leave little.
+ */
 const TELLING = 0.15;
+const LEAST_TELLING = 0.01;
 /** From here the other modes of a suspect are not worth a word. */
 const PLAIN = 0.8;
 
@@ -46,12 +51,18 @@ export function modeWords({ modes, fault }: Pick<PartStanding, 'modes' | 'fault'
   return { mode: first[0], words: named.map(([mode]) => modeLabels[mode]).join(' or ') };
 }
 
-function usedReadings(board: SheetBoard, sheet: readonly SheetReading[]): Quoted[] {
+function usedReadings(
+  board: SheetBoard,
+  sheet: readonly SheetReading[],
+  { expected }: Pick<SheetJudgement, 'expected'>,
+): Quoted[] {
   return sheet.flatMap((reading) => {
     const placed = placePoints(board, reading);
-    return placed.kind === 'network'
-      ? [{ reading, taken: { ...placed.probe, value: reading.value } }]
-      : [];
+    if (placed.kind !== 'network') return [];
+    const healthy = expected.find((e) => e.reading === reading.id);
+    const tight = healthy && healthy.ohms !== 'OL' ? healthy.band / 2 : TELLING;
+    const telling = Math.min(TELLING, Math.max(LEAST_TELLING, tight));
+    return [{ reading, telling, taken: { ...placed.probe, value: reading.value } }];
   });
 }
 
@@ -66,13 +77,13 @@ function mostTelling(
   misses: ReturnType<typeof predictUnder>,
 ) {
   let best: { at: number; gain: number } | null = null;
-  readings.forEach(({ taken }, at) => {
+  readings.forEach(({ taken, telling }, at) => {
     const [near, far] = [fits[at], misses[at]];
     if (near === undefined || far === undefined) return;
     const told = apart(taken.value, far) - apart(taken.value, near);
     const across = nets.includes(taken.from) && nets.includes(taken.to);
     const gain = told + (across ? ACROSS : 0);
-    if (told > TELLING && (!best || gain > best.gain)) best = { at, gain };
+    if (told > telling && (!best || gain > best.gain)) best = { at, gain };
   });
   return best as { at: number; gain: number } | null;
 }
@@ -80,11 +91,21 @@ function mostTelling(
 const netsOf = (network: Network, ref: string): readonly string[] =>
   network.parts.find((part) => part.ref === ref)?.nets ?? [];
 
-/** The likeliest hypothesis that has this fault, the fault itself first. */
-function withCompanions({ hypotheses }: DiagnosisAnswer, fault: Fault): Fault[] {
-  const same = (one: Fault) => one.ref === fault.ref && one.mode === fault.mode;
+/** The likeliest hypothesis that has this fault as it fits the readings, the fault itself first. */
+function withCompanions(
+  network: Network,
+  taken: readonly Taken[],
+  { hypotheses }: DiagnosisAnswer,
+  leaders: readonly Leader[],
+  fault: Fault,
+): ForcedPart[] {
+  const same = (one: { ref: string; mode?: Mode }) =>
+    one.ref === fault.ref && one.mode === fault.mode;
+  const leader = leaders.find(({ faults }) => faults.some(same));
+  if (leader) return [...leader.forced].sort((a, b) => Number(same(b)) - Number(same(a)));
   const found = hypotheses.find(({ faults }) => faults.some(same));
-  return [fault, ...(found?.faults ?? []).filter((one) => !same(one))].slice(0, 2);
+  const others = (found?.faults ?? []).filter((one) => !same(one));
+  return fitFaults(network, [fault, ...others].slice(0, 2), taken);
 }
 
 /** What the reading would be without this fault: healthy, or with the other one alone where that makes it differ. */
@@ -107,13 +128,15 @@ function suspectSaid(
   readings: readonly Quoted[],
   judged: Pick<SheetJudgement, 'expected'>,
   diagnosis: DiagnosisAnswer,
+  leaders: readonly Leader[],
   standing: PartStanding,
 ): Said {
   const { ref } = standing;
   const { mode } = modeWords(standing);
   if (mode === null) return { words: 'No reading tells of it yet.', reading: null };
   const taken = readings.map((r) => r.taken);
-  const [own, ...others] = fitFaults(network, withCompanions(diagnosis, { ref, mode }), taken);
+  const fault = { ref, mode };
+  const [own, ...others] = withCompanions(network, taken, diagnosis, leaders, fault);
   const fits = predictUnder(network, own ? [own, ...others] : others, taken);
   const without = predictUnder(network, others, taken);
   const found = mostTelling(readings, netsOf(network, ref), fits, without);
@@ -171,25 +194,18 @@ export function sentencesOn(
   board: SheetBoard,
   sheet: readonly SheetReading[],
   judged: Pick<SheetJudgement, 'diagnosis' | 'expected'>,
+  leaders: readonly Leader[],
 ): (standing: PartStanding) => Said {
   const network = drawnNetwork(board.positions, board.parts);
-  const readings = usedReadings(board, sheet);
+  const readings = usedReadings(board, sheet, judged);
   const { diagnosis } = judged;
   const able = diagnosis !== null && violations(network).length === 0;
-  const [first] = diagnosis?.hypotheses ?? [];
-  const leads = able && first !== undefined && first.probability > diagnosis.healthy;
-  const lead = leads
-    ? fitFaults(
-        network,
-        first.faults,
-        readings.map((r) => r.taken),
-      )
-    : [];
+  const lead = leaders[0]?.forced ?? [];
   return (standing) => {
     if (!able || standing.standing === 'untouched')
       return { words: 'No reading tells of it yet.', reading: null };
     return standing.standing === 'suspect'
-      ? suspectSaid(network, readings, judged, diagnosis, standing)
+      ? suspectSaid(network, readings, judged, diagnosis, leaders, standing)
       : clearedSaid(network, readings, lead, standing.ref);
   };
 }

@@ -3,6 +3,7 @@ import { groupsOf } from './told-apart';
 import { marginalsOf } from './marginals';
 import { observe } from './meter';
 import { doubtsOf } from './doubts';
+import type { Leader } from './leaders';
 import { byProbability, leadersOf } from './leaders';
 import { nextReadings } from './next';
 import type { Posterior } from './posterior';
@@ -22,6 +23,14 @@ export const DEFAULT_LIMIT = 20;
  * @throws RangeError when a reading names a net that is not in the network.
  */
 export function diagnose(input: DiagnosisInput): DiagnosisAnswer {
+  return diagnoseClosely(input).answer;
+}
+
+/** The same, with the likeliest hypotheses (at most six, the healthy network among them) fitted to the readings. */
+export function diagnoseClosely(input: DiagnosisInput): {
+  answer: DiagnosisAnswer;
+  leaders: readonly Leader[];
+} {
   const posterior = rank({
     network: input.network,
     probes: input.readings,
@@ -34,7 +43,7 @@ export function diagnose(input: DiagnosisInput): DiagnosisAnswer {
   const groups = groupsOf(posterior, marginals, parts);
   const order = byProbability(posterior);
   const leaders = leadersOf(posterior, order);
-  return {
+  const answer = {
     healthy: posterior.probability[0]!,
     entropy: marginals.entropy,
     hypotheses: ranked(posterior, order, input.limit ?? DEFAULT_LIMIT),
@@ -44,6 +53,7 @@ export function diagnose(input: DiagnosisInput): DiagnosisAnswer {
     doubtful: doubtsOf(input.network, input.readings, leaders),
     reasons: reasonsOf(input, leaders, parts, groups),
   };
+  return { answer, leaders };
 }
 
 /** The likeliest faulty hypotheses, best first. */

@@ -37,7 +37,7 @@ export const COUNTS = [6, 7, 6, 4, 5, 3, 4, 18, 3, 1, 1, 2] as const;
 const NOTES: Partial<Record<Step, string>> = {
   approve: 'Approved by phone, called back to the number on the ticket.',
   decline: 'Declined by phone: buys a new one.',
-  'wait-for-parts': 'Varistors of the same disc size and class, due on Thursday.',
+  'wait-for-parts': 'Parts of the same ratings and class ordered, due on Thursday.',
   'give-up': 'Board carbonised between the jacks: creepage cannot be restored.',
   release: 'Insulation jacks to case, fuse types, all ranges at two points: passed.',
 };
