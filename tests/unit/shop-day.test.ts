@@ -1,5 +1,5 @@
 import { expect, test } from 'vitest';
-import { startOfDay } from '@/domain/time/shop-day';
+import { dayOf, startOfDay } from '@/domain/time/shop-day';
 
 // Offsets and changes of clocks as in the IANA time zone database.
 test.each([
@@ -32,4 +32,11 @@ test.each(['', '2026-13', 'tomorrow', '2026-12-1'])('%j is no day', (day) => {
 
 test('a zone that is not known is refused', () => {
   expect(() => startOfDay('2026-12-01', 'Europe/Nowhere')).toThrow(RangeError);
+});
+
+test.each([
+  ['2026-11-30T23:30:00Z', 'Europe/Amsterdam', '2026-12-01'],
+  ['2026-12-01T04:59:00Z', 'America/New_York', '2026-11-30'],
+])('%s is in %s the day %s', (moment, zone, day) => {
+  expect(dayOf(new Date(moment), zone)).toBe(day);
 });

@@ -43,3 +43,8 @@ export function startOfDay(day: string, zone: string, later = 0): Date {
   const first = asUtc - offsetAt(asUtc, zone);
   return new Date(asUtc - offsetAt(first, zone));
 }
+
+/** The calendar day of a moment in the shop's zone, as year-month-day. */
+export function dayOf(moment: Date, timeZone: string): string {
+  return new Intl.DateTimeFormat('en-CA', { timeZone }).format(moment);
+}

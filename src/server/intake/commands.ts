@@ -5,6 +5,7 @@ import { inTransaction, isDuplicate, type Database, type Queryable } from '@/db/
 import { instruments, models } from '@/db/schema/shop';
 import { ticketNumbers, tickets } from '@/db/schema/tickets';
 import { monthOf, numberOf } from '@/domain/tickets/numbers';
+import { dayOf } from '@/domain/time/shop-day';
 import type { Granted } from '../auth/actor';
 import { hashClaimCode, newClaimCode } from '../auth/secrets';
 import { customerForIntake } from '../customers/commands';
@@ -62,6 +63,15 @@ async function instrumentFor(
   return made.id;
 }
 
+/** Nobody promises further ahead than this, ms. */
+const FURTHEST_PROMISE = 366 * 24 * 3_600_000;
+
+/** A promise lies between today and a year from now, by the shop's calendar. */
+function keepable(promisedOn: string, timeZone: string, now: Date): boolean {
+  const last = new Date(now.getTime() + FURTHEST_PROMISE);
+  return promisedOn >= dayOf(now, timeZone) && promisedOn <= dayOf(last, timeZone);
+}
+
 /** Takes in an instrument: customer, instrument, ticket, first event and the receipt mail in one transaction. */
 export async function takeIn(
   db: Database,
@@ -72,6 +82,8 @@ export async function takeIn(
 ): Promise<Outcome<{ number: string; claimCode: string }>> {
   if (input.symptoms.length === 0 && input.symptomText === '')
     return refuseField('symptoms', 'No symptom was given: tick one or describe it.');
+  if (input.promisedOn !== null && !keepable(input.promisedOn, shop.timeZone, now))
+    return refuseField('promisedOn', 'Promise a day between today and a year from now.');
   const claimCode = newClaimCode();
   const attempt = () =>
     inTransaction(db, async (tx): Promise<Outcome<{ number: string; claimCode: string }>> => {
