@@ -79,21 +79,25 @@ async function benchTickets(db: Queryable): Promise<Row[]> {
 
 const later = (from: Date, minutes: number) => new Date(from.getTime() + minutes * MINUTE);
 
-/** The whole board as it came, a close-up of what failed, and of the same place after the repair. */
+/**
+ * What failed, close up, and the same place after the repair; `shared` ones begin with the whole board as it came, and
+ * the customer sees their close-ups.
+ */
 function picturesOf(
   row: Row,
   { board, wear }: Pick<Story, 'board' | 'wear'>,
   shared: boolean,
 ): Picture[] {
   const groups = closeTogether(board, [...wear.keys()], NEAR);
+  const whole: Picture = {
+    phase: 'before',
+    close: [],
+    caption: 'As it came in, nothing touched.',
+    shared: false,
+    at: later(row.begun, 12),
+  };
   const pictures: Picture[] = [
-    {
-      phase: 'before',
-      close: [],
-      caption: 'As it came in, nothing touched.',
-      shared: false,
-      at: later(row.begun, 12),
-    },
+    ...(shared ? [whole] : []),
     ...groups.map((close, i) => ({
       phase: 'before' as const,
       close,

@@ -30,7 +30,7 @@ type Work = { shop: PhotoShop; actor: Bench; partIds: ReadonlyMap<string, number
 const TICKETS = 10;
 const WHOLE = { width: 2400, height: 1600 };
 /** Of tickets: smaller, as phones send them over a poor line. */
-const SMALL = { width: 1500, height: 1000 };
+const SMALL = { width: 1260, height: 840 };
 const CLOSE_SPAN = 58;
 const TYPE = 'image/jpeg';
 

@@ -1,5 +1,6 @@
 /** What the board lies on: a rubber mat, a beech top, a grey laminate. Drawn once, cut anew for each picture. */
 import sharp from 'sharp';
+import { enlarged } from './enlarge';
 import { sheetFrom, type Sheet } from './noise';
 
 export type BenchTop = 'mat' | 'beech' | 'slate';
@@ -62,13 +63,13 @@ export async function benchTop(
   width: number,
   height: number,
   seed: number,
-): Promise<Buffer> {
+): Promise<Uint8Array> {
   const [w, h] = [1000, Math.round((1000 * height) / width)];
   const left = (seed * 7919) % (WIDTH - w);
   const above = (seed * 6007) % (HEIGHT - h);
-  return sharp(sheetOf(top), { raw: { width: WIDTH, height: HEIGHT, channels: 3 } })
+  const pixels = await sharp(sheetOf(top), { raw: { width: WIDTH, height: HEIGHT, channels: 3 } })
     .extract({ left, top: above, width: w, height: h })
-    .resize(width, height, { kernel: 'linear', fit: 'fill' })
     .raw()
     .toBuffer();
+  return enlarged({ pixels, width: w, height: h }, width, height, 3);
 }

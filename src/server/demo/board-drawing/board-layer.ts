@@ -103,10 +103,14 @@ function holes(face: Face, paints: Paints): string {
 }
 
 /** The gap the switch's shaft goes through. */
+function shaftOf(face: Face, { wafer }: Floor): { x: number; y: number; r: number } | null {
+  return wafer?.kind === 'rotary' ? { ...face.flip(wafer.at), r: wafer.radius * 0.22 } : null;
+}
+
 function shaft(face: Face, floor: Floor): string {
-  if (floor.wafer?.kind !== 'rotary') return '';
-  const { x, y } = face.flip(floor.wafer.at);
-  const r = floor.wafer.radius * 0.22;
+  const gap = shaftOf(face, floor);
+  if (!gap) return '';
+  const { x, y, r } = gap;
   return circle(x, y, r + 0.14, face.mask.edge) + circle(x + 0.14, y + 0.2, r, '#1a1917');
 }
 
@@ -138,11 +142,14 @@ export function boardLayer({ plan, face, paints, wear }: Scene, marks: string): 
 /** How high the surface stands, as greys: mask 80, copper 130, pads and print a little above. */
 export function reliefLayer({ plan, face, paints }: Scene): string {
   const greys = { bare: '#505050', copper: '#8c8c8c' };
+  const gap = shaftOf(face, plan.floor);
   const outline = `${polyline(face.outline)}z`;
   return [
     rect(-200, -200, 600, 600, '#303030'),
     path(outline, greys.bare),
     copperOf(face, plan.floor, paints, greys),
     ...face.pads.map((pad) => padShape(pad, '#a0a0a0')),
+    ...face.screws.map((p) => circle(p.x, p.y, 1.6, greys.bare)),
+    gap ? circle(gap.x, gap.y, gap.r, greys.bare) : '',
   ].join('');
 }

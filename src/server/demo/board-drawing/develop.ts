@@ -8,17 +8,15 @@ export type Layers = {
   width: number;
   height: number;
   /** RGB. */
-  bench: Buffer;
+  bench: Uint8Array;
   /** RGBA. */
   board: Buffer;
   /** RGBA. */
   bodies: Buffer;
-  /** One byte a pixel: how high; how dark; how dark. */
-  relief: Buffer;
-  cast: Buffer;
-  contact: Buffer;
-  /** The board's own shadow on the bench. */
-  under: Buffer;
+  /** One byte a pixel: how high the board's surface stands. */
+  relief: Uint8Array;
+  /** One byte a pixel: the light that reaches the board, and the bench. */
+  shade: { board: Uint8Array; bench: Uint8Array };
 };
 
 export type Light = {
@@ -64,7 +62,7 @@ function lightOver({ width, height }: Layers, { glare, seed }: Light) {
 
 /** RGB pixels of the finished photograph. */
 export function developed(layers: Layers, light: Light): Buffer {
-  const { width, height, bench, board, bodies, relief, cast, contact, under } = layers;
+  const { width, height, bench, board, bodies, relief, shade } = layers;
   const { columns, near, cloud, fall } = lightOver(layers, light);
   const out = Buffer.allocUnsafe(width * height * 3);
   const grain = grainFrom(light.seed + 1);
@@ -90,10 +88,10 @@ export function developed(layers: Layers, light: Light): Buffer {
       let g = 0;
       let b = 0;
       if (a < 255) {
-        const dark = 1 - (under[i] ?? 0) * 0.00282;
-        r = (bench[i3] ?? 0) * dark;
-        g = (bench[i3 + 1] ?? 0) * dark;
-        b = (bench[i3 + 2] ?? 0) * dark;
+        const reached = (shade.bench[i] ?? 0) / 255;
+        r = (bench[i3] ?? 0) * reached;
+        g = (bench[i3 + 1] ?? 0) * reached;
+        b = (bench[i3 + 2] ?? 0) * reached;
       }
       if (a > 0) {
         // Light from the upper left: what rises towards it is bright, what falls away is dark.
@@ -101,17 +99,14 @@ export function developed(layers: Layers, light: Light): Buffer {
           (relief[below + (x < width - 1 ? x + 1 : x)] ?? 0) -
           (relief[above + (x > 0 ? x - 1 : x)] ?? 0);
         const shone = near[square] ?? 0;
-        const k = (cloud[square] ?? 1) + slope * (0.0016 + shone * 0.0022) + tint * 0.006;
-        const shine = strength * shone * (255 + slope * 0.9);
+        const k = (cloud[square] ?? 1) + slope * (0.0028 + shone * 0.0036) + tint * 0.006;
+        const shine = strength * shone * (255 + slope * 1.4);
         const share = a / 255;
-        r += ((board[i4] ?? 0) * k + shine - r) * share;
-        g += ((board[i4 + 1] ?? 0) * k + shine - g) * share;
-        b += ((board[i4 + 2] ?? 0) * k + shine * 1.03 - b) * share;
+        const reached = (shade.board[i] ?? 0) / 255;
+        r += (((board[i4] ?? 0) * k + shine) * reached - r) * share;
+        g += (((board[i4 + 1] ?? 0) * k + shine) * reached - g) * share;
+        b += (((board[i4 + 2] ?? 0) * k + shine * 1.03) * reached - b) * share;
       }
-      const shade = (1 - (cast[i] ?? 0) * 0.00243) * (1 - (contact[i] ?? 0) * 0.00196);
-      r *= shade;
-      g *= shade;
-      b *= shade;
       const c = bodies[i4 + 3] ?? 0;
       if (c > 0) {
         const share = c / 255;

@@ -5,14 +5,16 @@ import { chanceFrom } from '../chance';
 import type { Wear } from './bodies/brush';
 import { benchTop } from './bench-top';
 import { boardLayer, reliefLayer } from './board-layer';
-import { bodyLayer, bodyMiddle, contactLayer, marksLayer, shadowLayer } from './body-layer';
+import { bodyLayer, bodyMiddle, marksLayer } from './body-layer';
 import { developed } from './develop';
 import { faceOf } from './face';
 import { framed, shareOf, svgOf, type Frame } from './frame';
-import { at, distance, middleOf, polyline, type Point, type Side } from './geometry';
+import { enlarged } from './enlarge';
+import { at, distance, middleOf, type Point, type Side } from './geometry';
 import { Paints } from './paint';
 import { planOf } from './plan';
 import type { Scene } from './scene';
+import { shadeMaps } from './shade-maps';
 import type { Part } from './types';
 
 export type Shot = {
@@ -35,7 +37,7 @@ export type Photograph = {
 };
 
 /** The sensor is a little coarser than the picture: edges come out soft, as they do. */
-const SENSOR = 0.84;
+const SENSOR = 0.8;
 
 function frameFor(shot: Shot, scene: Omit<Scene, 'frame' | 'paints'>): Frame {
   const chance = chanceFrom(shot.seed * 31 + 5);
@@ -75,18 +77,15 @@ export function closeTogether(
 
 const raw = (svg: Buffer) => sharp(svg, { limitInputPixels: false }).ensureAlpha().raw().toBuffer();
 
-/** A black-on-nothing drawing as darkness, made small, blurred and brought to size. */
-async function darkness(svg: Buffer, frame: Frame, blur: number): Promise<Buffer> {
-  const { data, info } = await sharp(svg)
-    .extractChannel('alpha')
-    .blur(blur)
-    .raw()
-    .toBuffer({ resolveWithObject: true });
-  return sharp(data, { raw: info })
-    .resize(frame.width, frame.height, { fit: 'fill', kernel: 'linear' })
+/** The relief, drawn at half the size: copper has soft edges under the mask. */
+async function reliefOf(scene: Scene, drawing: string): Promise<Uint8Array> {
+  const { frame, paints } = scene;
+  const { data, info } = await sharp(svgOf(frame, drawing, paints.definitions(), 0.5))
     .extractChannel(0)
     .raw()
-    .toBuffer();
+    .toBuffer({ resolveWithObject: true });
+  const { width, height } = info;
+  return enlarged({ pixels: data, width, height }, frame.width, frame.height);
 }
 
 /** Takes the photograph. */
@@ -94,29 +93,20 @@ export async function photographed(shot: Shot): Promise<Photograph> {
   const plan = planOf(shot.board);
   const face = faceOf(plan, shot.side);
   const frame = frameFor(shot, { plan, face, wear: shot.wear });
-  const paints = new Paints('p');
-  const scene: Scene = { plan, face, frame, wear: shot.wear, paints };
+  const scene: Scene = { plan, face, frame, wear: shot.wear, paints: new Paints('p') };
   const board = boardLayer(scene, marksLayer(scene));
   const bodies = bodyLayer(scene);
   const relief = reliefLayer(scene);
-  const definitions = paints.definitions();
-  const small = 0.25;
-  const outline = `<path d="${polyline(face.outline)}z" transform="translate(1.1 1.5)"/>`;
+  const definitions = scene.paints.definitions();
   const chance = chanceFrom(shot.seed);
-  const px = (mm: number) => Math.max(0.5, mm * frame.scale * small);
   const layers = {
     width: frame.width,
     height: frame.height,
     bench: await benchTop(plan.floor.bench, frame.width, frame.height, shot.seed),
     board: await raw(svgOf(frame, board, definitions)),
     bodies: await raw(svgOf(frame, bodies, definitions)),
-    relief: await sharp(svgOf(frame, relief, definitions))
-      .extractChannel(0)
-      .raw()
-      .toBuffer(),
-    cast: await darkness(svgOf(frame, shadowLayer(scene), '', small), frame, px(0.75)),
-    contact: await darkness(svgOf(frame, contactLayer(scene), '', small), frame, px(0.3)),
-    under: await darkness(svgOf(frame, outline, '', small), frame, px(1.6)),
+    relief: await reliefOf(scene, relief),
+    shade: await shadeMaps(scene),
   };
   const warm = chance.between(-0.025, 0.03);
   const exposure = chance.between(1.06, 1.14);
@@ -132,7 +122,7 @@ export async function photographed(shot: Shot): Promise<Photograph> {
   const jpeg = await sharp(pixels, {
     raw: { width: frame.width, height: frame.height, channels: 3 },
   })
-    .resize(shot.width, shot.height, { kernel: 'cubic', fit: 'fill' })
+    .resize(shot.width, shot.height, { kernel: 'linear', fit: 'fill' })
     .jpeg({ quality: 88, chromaSubsampling: '4:2:0' })
     .toBuffer();
   return { jpeg, places: placesOf(scene) };
