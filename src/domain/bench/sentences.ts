@@ -24,6 +24,8 @@ type Quoted = { reading: SheetReading; taken: Taken; telling: number };
  */
 const TELLING = 0.15;
 const LEAST_TELLING = 0.01;
+/** From here a suspect that no single reading accuses is a likely one. */
+const LIKELY = 0.5;
 /** From here the other modes of a suspect are not worth a word. */
 const PLAIN = 0.8;
 
@@ -143,7 +145,10 @@ function suspectSaid(
   const quoted = found ? readings[found.at] : undefined;
   if (!quoted)
     return {
-      words: 'No reading speaks against it; its kind and the incident speak for it.',
+      words:
+        standing.fault < LIKELY
+          ? 'Not ruled out: no reading tells against it yet.'
+          : 'No reading speaks against it; its kind and the incident speak for it.',
       reading: null,
     };
   const { reading } = quoted;
