@@ -4,9 +4,9 @@ import type { Queryable } from '@/db/client';
 import { users } from '@/db/schema/people';
 import { readings } from '@/db/schema/tickets';
 import type { BenchReading, Suspects } from '@/contracts/bench';
-import { judgeSheet } from '@/domain/bench/judge-sheet';
 import type { Incident } from '@/domain/parts/kinds';
 import { boardNetwork } from '../boards/queries';
+import { judged } from './judged';
 
 type Phase = BenchReading['phase'];
 
@@ -55,6 +55,5 @@ export async function suspectsOf(
     sheetOf(db, ticket.id, phase),
     ticket.boardId === null ? null : boardNetwork(db, ticket.boardId),
   ]);
-  const judged = judgeSheet(board?.positions ?? [], board?.parts ?? [], sheet, ticket.incident);
-  return judged as Suspects;
+  return judged(board ?? { positions: [], parts: [] }, sheet, ticket.incident);
 }

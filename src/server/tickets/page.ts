@@ -1,8 +1,7 @@
 /** Everything the ticket page shows, read at once. */
-import { judgeSheet } from '@/domain/bench/judge-sheet';
-import type { Suspects } from '@/contracts/bench';
 import type { Role } from '@/domain/people';
 import { offeredSteps } from '@/domain/tickets/stages';
+import { judged } from '../bench/judged';
 import { sheetOf } from '../bench/queries';
 import { boardNetwork, labelsOf } from '../boards/queries';
 import { proposeNotes } from '../faults/queries';
@@ -32,7 +31,7 @@ async function benchOf({ db }: Runtime, ticket: TicketFull) {
   const parts = file?.parts ?? [];
   const judge = (phase: 'as-found' | 'after-repair') => {
     const sheet = readings.filter((r) => r.phase === phase);
-    return judgeSheet(positions, parts, sheet, ticket.incident) as Suspects;
+    return judged({ positions, parts }, sheet, ticket.incident);
   };
   const repaired = readings.some((r) => r.phase === 'after-repair');
   return {
