@@ -75,14 +75,6 @@ export async function takeStep(
   return inTransaction(db, async (tx) => {
     const [row] = await tx.select().from(tickets).where(eq(tickets.number, number)).for('update');
     if (!row || (actor.kind === 'customer' && !isOwn(actor, row))) return absent('ticket');
-    if (row.version !== version)
-      return refuse(
-        'stale',
-        'The ticket was changed meanwhile: look at it again, then repeat the step.',
-        {
-          more: { yours: version, current: row.version, stage: row.stage },
-        },
-      );
     const { estimate } = input;
     const { amount = 1, currency = shop.currency } = estimate?.total ?? {};
     if (currency !== shop.currency || amount <= 0 || amount > MOST_MINOR)
@@ -98,6 +90,14 @@ export async function takeStep(
       return decided.path
         ? refuseField(decided.path, decided.reason)
         : refuse(REFUSED[decided.why], decided.reason);
+    if (row.version !== version)
+      return refuse(
+        'stale',
+        'The ticket was changed meanwhile: look at it again, then repeat the step.',
+        {
+          more: { yours: version, current: row.version, stage: row.stage },
+        },
+      );
     const bench =
       input.step === 'begin' && row.assignedTo === null && roleMay(actor.role, 'ticket.bench');
     const [changed] = await tx
@@ -181,6 +181,8 @@ export async function assign(
   version: number,
   now: Date,
 ): Promise<Outcome<{ version: number }>> {
+  if (isClosed(ticket.stage))
+    return refuse('conflict', 'The ticket is closed: it stays with whoever had it.');
   return inTransaction(db, async (tx) => {
     let name = 'nobody';
     if (personId !== null) {
