@@ -10,8 +10,10 @@ const WINDOWS = {
   'sign-in-address': { points: 60, duration: 15 * 60 },
   /** Wrong codes of one account's second factor. */
   totp: { points: 6, duration: 15 * 60 },
-  /** Wrong claim codes for one ticket. */
+  /** Wrong claim codes for one ticket from one address: guesses elsewhere must not keep its owner out. */
   claim: { points: 8, duration: 15 * 60 },
+  /** For one ticket from everywhere; of 30^10 codes so few are nothing. */
+  'claim-ticket': { points: 200, duration: 15 * 60 },
   'claim-address': { points: 40, duration: 15 * 60 },
   /** Mails asked for by one mailbox (reset and one-time links). */
   mail: { points: 4, duration: 60 * 60 },

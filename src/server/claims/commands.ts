@@ -21,23 +21,28 @@ const wrong = () =>
     'Ticket number and claim code don’t belong together: check both on your receipt.',
   );
 
-/** Opens a session that sees this ticket alone. Tries are limited per ticket and per address. */
+/** Opens a session that sees this ticket alone. Wrong tries are limited per address, and per ticket. */
 export async function enterByClaim(
   app: { db: Database; limits: Limits; sessions: SessionKeeper },
   input: { number: string; code: string },
   secret: string,
   address: string,
 ): Promise<Outcome<{ cookie: string; number: string }>> {
+  const { limits } = app;
+  const here = `${input.number} ${address}`;
   const tooMany =
-    (await app.limits.take('claim', input.number)) ??
-    (await app.limits.take('claim-address', address));
+    (await limits.take('claim-address', address)) ??
+    (await limits.take('claim', here)) ??
+    (await limits.take('claim-ticket', input.number));
   if (tooMany) return tooMany;
   const [ticket] = await app.db.select().from(tickets).where(eq(tickets.number, input.number));
   const given = hashClaimCode(secret, input.number, input.code);
   if (!ticket || !sameHash(ticket.claimHash, given)) return wrong();
   const account = await accountOf(app.db, ticket.customerId);
   if (account === null) throw new Error(`Customer ${ticket.customerId} has no account.`);
-  await app.limits.clear('claim', input.number);
+  await limits.giveBack('claim-address', address);
+  await limits.giveBack('claim-ticket', input.number);
+  await limits.clear('claim', here);
   return done({ cookie: await app.sessions.open(account, ticket.id), number: ticket.number });
 }
 
