@@ -11,10 +11,16 @@ export async function endSessions(tx: Queryable, userId: number, keep?: string):
     .where(keep === undefined ? theirs : and(theirs, ne(sessions.id, hashSecret(keep))));
 }
 
-/** Revokes all API tokens of a person. */
-export async function revokeTokens(tx: Queryable, userId: number, now: Date): Promise<void> {
-  await tx
+/** Ends the sessions that a ticket's claim code opened. */
+export async function endClaimSessions(tx: Queryable, ticketId: number): Promise<void> {
+  await tx.delete(sessions).where(eq(sessions.ticketId, ticketId));
+}
+
+/** Revokes all API tokens of a person; answers how many there were. */
+export async function revokeTokens(tx: Queryable, userId: number, now: Date): Promise<number> {
+  const [result] = await tx
     .update(apiTokens)
     .set({ revokedAt: now })
     .where(and(eq(apiTokens.userId, userId), isNull(apiTokens.revokedAt)));
+  return result.affectedRows;
 }

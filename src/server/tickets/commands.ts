@@ -2,17 +2,20 @@
 import { and, count, eq } from 'drizzle-orm';
 import { inTransaction, type Database, type Queryable } from '@/db/client';
 import { users } from '@/db/schema/people';
+import { customers } from '@/db/schema/shop';
 import { readings, ticketCautions, ticketEvents, tickets } from '@/db/schema/tickets';
 import { MOST_MINOR } from '@/domain/money';
 import { roleMay } from '@/domain/people';
 import { decideStep, isClosed, type Stage, type Step } from '@/domain/tickets/stages';
 import { CAUTION_CODES, type Caution } from '@/domain/tickets/vocabulary';
 import type { CustomerActor, Granted } from '../auth/actor';
+import { endClaimSessions } from '../auth/end-access';
 import { hashClaimCode, newClaimCode } from '../auth/secrets';
 import { promise } from '../outbox/commands';
 import { absent, done, refuse, refuseField, type Outcome } from '../refusal';
-import { stepMail } from '../mail/letters';
+import { receiptMail, stepMail } from '../mail/letters';
 import { isOwn } from './policy';
+import type { TicketFull } from './queries';
 import type { Shop, TicketHead } from './types';
 
 type EventRow = typeof ticketEvents.$inferInsert;
@@ -204,16 +207,16 @@ export async function assign(
   });
 }
 
-/** A new claim code: the old one stops working. The receipt with it is mailed again. */
+/** A new claim code: the old one stops working, and so does what it opened. The receipt is mailed again with it. */
 export async function renewClaim(
   db: Database,
   actor: Granted<'ticket.intake'>,
-  ticket: TicketHead,
+  ticket: TicketFull,
   shop: Shop,
   now: Date,
-): Promise<Outcome<{ claimCode: string }>> {
+): Promise<Outcome<{ claimCode: string; mailedTo: string | null }>> {
   const claimCode = newClaimCode();
-  await inTransaction(db, async (tx) => {
+  const mailedTo = await inTransaction(db, async (tx) => {
     await tx
       .update(tickets)
       .set({ claimHash: hashClaimCode(shop.secret, ticket.number, claimCode) })
@@ -225,6 +228,17 @@ export async function renewClaim(
       { kind: 'claim', note: 'new claim code', open: false },
       now,
     );
+    await endClaimSessions(tx, ticket.id);
+    const [customer] = await tx.select().from(customers).where(eq(customers.id, ticket.customerId));
+    if (!customer?.email) return null;
+    const [codes] = await tx
+      .select({ n: count() })
+      .from(ticketEvents)
+      .where(and(eq(ticketEvents.ticketId, ticket.id), eq(ticketEvents.kind, 'claim')));
+    const onceKey = `receipt:${ticket.number}:${1 + (codes?.n ?? 0)}`;
+    const mail = receiptMail(shop, customer, ticket.number, claimCode, ticket);
+    await promise(tx, shop.secret, onceKey, { kind: 'mail', mail }, now);
+    return customer.email;
   });
-  return done({ claimCode });
+  return done({ claimCode, mailedTo });
 }
