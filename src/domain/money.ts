@@ -12,3 +12,6 @@ export function parseMoney(text: string): number | null {
   if (!match) return null;
   return Number(match[1]) * 100 + Number(match[2] ?? 0);
 }
+
+/** A sum as digits alone, two decimals: `72.48` of 7248 minor units. */
+export const writeMoney = (minor: number): string => (minor / 100).toFixed(2);

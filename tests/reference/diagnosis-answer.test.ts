@@ -134,6 +134,46 @@ describe('what the answer says', () => {
     expect(sum).toBeLessThan(1 + 1e-9);
   });
 
+  describe('a part of close tolerance', () => {
+    const divider: Network = {
+      positions: ['volts'],
+      parts: [
+        { ref: 'R1', kind: 'resistor', nets: ['V', 'N'], ohms: 4.99e6, tolerance: 0.01 },
+        { ref: 'R2', kind: 'resistor', nets: ['N', 'Q'], ohms: 4.99e6, tolerance: 0.01 },
+        { ref: 'R3', kind: 'resistor', nets: ['Q', 'COM'], ohms: 1.11e6, tolerance: 0.01 },
+      ],
+    };
+    const at = (value: number, resolution: number): Reading[] => [
+      { from: 'V', to: 'N', value: 4.99e6, resolution: 1e4 },
+      { from: 'N', to: 'Q', value, resolution },
+    ];
+
+    // IEC 60062 letter F: ±1 %. Beyond it and the meter's ±(0.8 % + 3 counts) the part has drifted.
+    it.each([5.3e6, 5.6e6, 5.9e6])('has drifted as soon as it leaves it: %d Ω', (value) => {
+      const answer = diagnose({ network: divider, readings: at(value, 1e4) });
+      expect(answer.hypotheses[0]!.faults).toEqual([{ ref: 'R2', mode: 'drifted-high' }]);
+      expect(standing(answer, 'R2')).toBe('suspect');
+      expect(standing(answer, 'R1')).toBe('cleared');
+      expect(answer.doubtful).toEqual([]);
+    });
+
+    it('is accused also when its value was noted with few digits', () => {
+      const answer = diagnose({ network: divider, readings: at(10e6, 1e6) });
+      expect(answer.hypotheses[0]!.faults).toEqual([{ ref: 'R2', mode: 'drifted-high' }]);
+      expect(answer.hypotheses[0]!.probability).toBeGreaterThan(0.7);
+    });
+  });
+
+  it('does not accuse what no reading made likelier', () => {
+    const readings = readingsOf(handheld, [{ ref: 'RT1', ohms: 'OL' }]).slice(0, 4);
+    const answer = diagnose({ network: handheld.network, readings, incident: 'mains-on-ohms' });
+    const before = diagnose({ network: handheld.network, readings: [], incident: 'mains-on-ohms' });
+    for (const part of answer.parts.filter((p) => p.standing === 'suspect')) {
+      const was = before.parts.find((p) => p.ref === part.ref)!.fault;
+      expect(part.fault, part.ref).toBeGreaterThan(Math.min(0.5, was));
+    }
+  });
+
   it('lets confirmed faults of the board weigh in, and says how often', () => {
     const readings: Reading[] = [{ from: 'VIN', to: 'COM', position: 'volts', value: 'OL' }];
     const seen = [{ ref: 'S1', mode: 'open' as const, times: 7 }];

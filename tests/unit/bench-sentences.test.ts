@@ -35,7 +35,7 @@ describe('the sentence of a part', () => {
     const leaky = taken(5, { from: 'P', to: 'COM', value: 22_000, resolution: 100 });
     const words = saidOf([leaky, taken(6, { from: 'V', to: 'P', value: 1100 })], 'RV1')?.words;
     expect(words).toMatch(
-      /^P to COM reads 22\.0 kΩ; healthy it would be .* About \d0 kΩ across it explains that\.$/,
+      /^P to COM reads 22\.0 kΩ; healthy it would be .* A leak of about 22 kΩ through RV1 explains that\.$/,
     );
   });
 

@@ -125,6 +125,15 @@ function shouldBe(
   return `; healthy it would be ${writeExpected(healthy.ohms)}`;
 }
 
+/** What the part would have to be: `RV1 leaking about 22 kΩ explains that.` */
+function explaining(ref: string, mode: Mode, ohms: Ohms): string {
+  if (ohms === 'OL' || mode === 'open' || mode === 'short') return '';
+  const about = formatOhms(Number(ohms.toPrecision(2)));
+  return mode === 'leaky'
+    ? `A leak of about ${about} through ${ref} explains that.`
+    : `${ref} at about ${about} explains that.`;
+}
+
 function suspectSaid(
   network: Network,
   readings: readonly Quoted[],
@@ -134,7 +143,8 @@ function suspectSaid(
   standing: PartStanding,
 ): Said {
   const { ref } = standing;
-  const { mode } = modeWords(standing);
+  const lead = leaders.flatMap(({ faults }) => faults).find((fault) => fault.ref === ref);
+  const mode = lead?.mode ?? modeWords(standing).mode;
   if (mode === null) return { words: 'No reading tells of it yet.', reading: null };
   const taken = readings.map((r) => r.taken);
   const fault = { ref, mode };
@@ -153,10 +163,7 @@ function suspectSaid(
     };
   const { reading } = quoted;
   const should = shouldBe(judged, reading, others, without[found?.at ?? 0]);
-  const about =
-    own && own.ohms !== 'OL' && mode !== 'short'
-      ? ` About ${formatOhms(Number(own.ohms.toPrecision(1)))} across it explains that.`
-      : '';
+  const about = own ? ` ${explaining(ref, mode, own.ohms)}`.trimEnd() : '';
   return {
     words: `${writePoints(reading)} reads ${writeMeasured(reading)}${should}.${about}`,
     reading: reading.id,

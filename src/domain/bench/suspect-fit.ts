@@ -1,7 +1,7 @@
 /** How well a fault explains single readings: what a sentence about it can quote. */
 import { predictUnder } from '../diagnosis/predict';
 import type { Fault } from '../diagnosis/types';
-import { healthyOhms } from '../network/healthy';
+import { healthyOhms, toleranceOf } from '../network/healthy';
 import type { ForcedPart, Network, Ohms, Probe } from '../network/types';
 import type { Mode } from '../parts/kinds';
 import { modeRange } from '../parts/mode-ranges';
@@ -24,7 +24,7 @@ export function apart(value: Ohms, predicted: Ohms): number {
 function valuesOf(network: Network, { ref, mode }: Fault): Ohms[] {
   const part = network.parts.find((p) => p.ref === ref);
   if (!part || mode === 'open') return ['OL'];
-  const { low, high } = modeRange(mode, healthyOhms(part));
+  const { low, high } = modeRange(mode, healthyOhms(part), toleranceOf(part));
   return Array.from({ length: TRIED }, (_, i) => low * (high / low) ** (i / (TRIED - 1)));
 }
 

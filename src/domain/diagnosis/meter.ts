@@ -32,9 +32,12 @@ export function observe(reading: Reading): Observation {
   const over = reading.value === 'OL';
   const value = reading.value === 'OL' ? overRange : reading.value;
   const resolution = over ? value / 4000 : (reading.resolution ?? autorangeResolution(value));
-  const leads = Math.min(LEAD_OHMS, 2 * resolution);
-  const floor = accuracy.counts * resolution + resolution + leads;
-  const limit = (accuracy.percent / 100) * value + accuracy.counts * resolution;
+  // A value noted with fewer digits than the meter shows is rounded; the meter's counts are not coarser for it.
+  const digit =
+    reading.accuracy === undefined ? Math.min(resolution, autorangeResolution(value)) : resolution;
+  const leads = Math.min(LEAD_OHMS, 2 * digit);
+  const floor = accuracy.counts * digit + resolution + leads;
+  const limit = (accuracy.percent / 100) * value + accuracy.counts * digit;
   const squared = (limit * limit + leads * leads) / 3 + (resolution * resolution) / 12;
   return {
     over,

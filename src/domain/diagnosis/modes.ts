@@ -1,4 +1,4 @@
-import { healthyOhms, INSULATING_OHMS } from '@/domain/network/healthy';
+import { healthyOhms, INSULATING_OHMS, toleranceOf } from '@/domain/network/healthy';
 import type { Network, NetworkPart } from '@/domain/network/types';
 import { modesOf } from '@/domain/parts/failure-shares';
 import type { Mode } from '@/domain/parts/kinds';
@@ -26,7 +26,8 @@ export function partModes(network: Network): PartMode[] {
     modesOf(part.kind).map((mode) => {
       const bridges = bridging(part, mode);
       // A bridged contact is one that should insulate.
-      const { low, high } = modeRange(mode, bridges ? INSULATING_OHMS : healthyOhms(part));
+      const nominal = bridges ? INSULATING_OHMS : healthyOhms(part);
+      const { low, high } = modeRange(mode, nominal, toleranceOf(part));
       return { part: index, mode, low: Math.log(low), high: Math.log(high), bridges };
     }),
   );

@@ -9,14 +9,15 @@ import type { Workshop } from './workshop';
 
 /** A reading notices a fault that moves it by this many standard deviations of the meter. */
 const NOTICED = 2;
-/** From here a part is a suspect whatever its odds were. */
+/** A part is a suspect from this probability on, where the readings raised it by this factor. */
 const SUSPECT = 0.05;
-/** So is a rare one whose odds the readings at least doubled. */
-const RISEN = 2;
-const RISEN_FROM = 0.01;
+const RAISED = 1.2;
+/** So is a rare one that they raised more. */
+const RARE = 0.01;
+const RAISED_RARE = 2;
 /** A part is cleared when the readings cut its odds below this share of what they were. */
 const CUT = 0.5;
-/** A part of which no reading tells is a suspect only when the incident alone makes it likely. */
+/** A likely one is a suspect whatever the readings say of it: the incident alone accuses it. */
 const LIKELY = 0.5;
 
 /** Standing of every part, in the order of the network. */
@@ -32,8 +33,10 @@ export function standingsOf(posterior: Posterior, marginals: Marginals): PartSta
 }
 
 function standingOf(after: number, before: number, seen: boolean): Standing {
-  if (!seen) return after >= LIKELY ? 'suspect' : 'untouched';
-  if (after >= SUSPECT || (after >= RISEN_FROM && after >= RISEN * before)) return 'suspect';
+  if (after >= LIKELY) return 'suspect';
+  if (!seen) return 'untouched';
+  if (after >= SUSPECT && after >= RAISED * before) return 'suspect';
+  if (after >= RARE && after >= RAISED_RARE * before) return 'suspect';
   return after < CUT * before ? 'cleared' : 'untouched';
 }
 

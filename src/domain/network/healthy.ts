@@ -33,11 +33,16 @@ export function healthyOhms(part: NetworkPart): number {
   return usual;
 }
 
+/** The part's tolerance as a fraction: its own, or the usual one of its kind. */
+export function toleranceOf({ tolerance, kind }: NetworkPart): number {
+  return tolerance ?? defaultTolerance(kind);
+}
+
 /**
  * Standard deviation of ln R of the healthy part: its tolerance read as a rectangular distribution, a/√3
  * (JCGM 100:2008, 4.3.7), or the wide spread of a part that insulates.
  */
 export function healthySpread(part: NetworkPart): number {
   if (part.tolerance === undefined && healthyFloor(part.kind) !== null) return INSULATING_SPREAD;
-  return (part.tolerance ?? defaultTolerance(part.kind)) / Math.sqrt(3);
+  return toleranceOf(part) / Math.sqrt(3);
 }

@@ -49,7 +49,15 @@ export type TicketFacts = {
   stage: Stage;
   stageBefore: Stage | null;
   cautionsTicked: boolean;
-  readingsAfterRepair: number;
+  /** Whether the board is known with a network that readings can be judged on. */
+  hasNetwork: boolean;
+  afterRepair: {
+    readings: number;
+    /** Those that say something: on the board's network, or of a part judged alone. */
+    usable: number;
+    /** References of the parts that they accuse. */
+    accused: readonly string[];
+  };
 };
 
 const bench: readonly Role[] = ['technician', 'senior', 'owner'];
@@ -62,17 +70,28 @@ type Rule = {
   to: Stage | 'before';
   who: readonly Role[];
   /** What the note must say; absent when a note is optional. A customer's own step needs none. */
-  note?: string;
+  note?: string | ((facts: TicketFacts) => string | null);
+  /** Why the step would be an exception that its note signs. */
+  exception?: (facts: TicketFacts) => string | null;
   estimate?: true;
   requires?: (facts: TicketFacts) => string | null;
 };
 
 const cautionsFirst = (facts: TicketFacts) =>
   facts.cautionsTicked ? null : 'The cautions are not all ticked: tick them on the ticket first.';
-const proofOfRepair = (facts: TicketFacts) =>
-  facts.readingsAfterRepair > 0
-    ? cautionsFirst(facts)
-    : 'No reading after repair is on the bench sheet: enter at least one first.';
+/** A reading proves something where the board's network, or its part, can judge it. */
+function proofOfRepair(facts: TicketFacts): string | null {
+  const { readings, usable } = facts.afterRepair;
+  if (readings === 0)
+    return 'No reading after repair is on the bench sheet: enter at least one first.';
+  if (facts.hasNetwork && usable === 0)
+    return 'No reading after repair can be judged on the board’s network: name points or parts of it first.';
+  return cautionsFirst(facts);
+}
+const accusedStill = ({ afterRepair: { accused } }: TicketFacts) =>
+  accused.length === 0
+    ? null
+    : `The readings after repair still accuse ${accused.join(', ')}: to let it go is an exception.`;
 
 const RULES = {
   begin: {
@@ -127,6 +146,8 @@ const RULES = {
     from: ['in-repair'],
     to: 'release-check',
     who: bench,
+    note: (facts) =>
+      facts.hasNetwork ? null : 'what shows the repair, as no network of its board can',
     requires: proofOfRepair,
   },
   'back-to-repair': {
@@ -141,7 +162,11 @@ const RULES = {
     from: ['release-check'],
     to: 'ready',
     who: seniors,
-    note: 'what was checked and how, or why it may leave without',
+    note: (facts) =>
+      accusedStill(facts)
+        ? 'why it may leave all the same'
+        : 'what was checked and how, or why it may leave without',
+    exception: accusedStill,
     requires: proofOfRepair,
   },
   'back-to-bench': {
@@ -178,8 +203,13 @@ const rule = (step: Step): Rule => RULES[step];
 
 export type StepInput = { note: string; estimate?: { minor: number; work: string } | null };
 export type StepAnswer =
-  | { ok: true; to: Stage }
+  | { ok: true; to: Stage; exception: boolean }
   | { ok: false; why: 'not-allowed' | 'not-from-here' | 'missing'; reason: string; path?: string };
+
+function noteOf(step: Step, facts: TicketFacts): string | null {
+  const { note = null } = rule(step);
+  return typeof note === 'function' ? note(facts) : note;
+}
 
 /** The stage a step leads to, for a ticket that stands where `facts` say. */
 function target(step: Step, facts: TicketFacts): Stage {
@@ -211,8 +241,9 @@ export function decideStep(
     };
   const unmet = r.requires?.(facts) ?? null;
   if (unmet) return { ok: false, why: 'missing', reason: unmet };
-  if (r.note && role !== 'customer' && input.note.trim() === '')
-    return { ok: false, why: 'missing', path: 'note', reason: `Write ${r.note}.` };
+  const note = noteOf(step, facts);
+  if (note && role !== 'customer' && input.note.trim() === '')
+    return { ok: false, why: 'missing', path: 'note', reason: `Write ${note}.` };
   if (r.estimate && !input.estimate)
     return {
       ok: false,
@@ -220,7 +251,8 @@ export function decideStep(
       path: 'estimate',
       reason: 'No price was given: write the total and the work it covers.',
     };
-  return { ok: true, to: target(step, facts) };
+  const exception = r.exception?.(facts) ?? null;
+  return { ok: true, to: target(step, facts), exception: exception !== null };
 }
 
 /** True when a step goes forward along the scale: the usual next thing to do. */
@@ -238,6 +270,8 @@ export type OfferedStep = {
   estimate: boolean;
   /** Why it cannot be taken yet; null when it can. */
   blocked: string | null;
+  /** Why it is an exception, signed by the note, which the customer reads; null when it is none. */
+  exception: string | null;
 };
 
 /** The steps this role may take from here, the usual one first; blocked ones carry the reason. */
@@ -249,9 +283,10 @@ export function offeredSteps(facts: TicketFacts, role: Role): OfferedStep[] {
         step,
         label: r.label,
         to: target(step, facts),
-        note: role === 'customer' ? null : (r.note ?? null),
+        note: role === 'customer' ? null : noteOf(step, facts),
         estimate: r.estimate ?? false,
         blocked: r.requires?.(facts) ?? null,
+        exception: r.exception?.(facts) ?? null,
       };
     },
   );
