@@ -14,6 +14,7 @@ const stemTo = ({ x, y, width, height }: Plate) =>
  * zoomed.
  */
 export function PinMark({
+  id,
   label,
   kind,
   state,
@@ -21,6 +22,7 @@ export function PinMark({
   plate,
   lit,
 }: {
+  id: string;
   label: string;
   /** Null for a mark with a label of its own. */
   kind: PartKind | null;
@@ -32,6 +34,7 @@ export function PinMark({
 }) {
   return (
     <g
+      id={id}
       className={lit ? 'pin pin-lit' : 'pin'}
       transform={`translate(${at.x.toFixed(1)} ${at.y.toFixed(1)})`}
     >

@@ -39,13 +39,13 @@ export function StagePins({
     lit: chosenPin === pin.id || litRef === pin.label,
   }));
   const plates = layPlates(placed, stage);
-  // The order in the document is that of the keyboard, so the lit ones are drawn once more by reference.
+  // The order in the document is that of the keyboard, so the lit ones are drawn once more by reference: the mark
+  // alone, since what takes the focus would take it a second time there.
   return (
     <>
       {placed.map(({ pin, at, lit }) => (
         <g
           key={pin.id}
-          id={`photo-pin-${pin.id}`}
           data-pin={pin.id}
           className="pin-hold"
           tabIndex={0}
@@ -62,6 +62,7 @@ export function StagePins({
           }}
         >
           <PinMark
+            id={`photo-pin-${pin.id}`}
             label={pin.label}
             kind={kindOf(pin)}
             state={stateOf(pin)}
@@ -73,8 +74,13 @@ export function StagePins({
       ))}
       {placed
         .filter(({ lit }) => lit)
-        .map(({ id }) => (
-          <use key={id} href={`#photo-pin-${id}`} className="pin-above" aria-hidden="true" />
+        .map(({ id, label }) => (
+          <use
+            key={id}
+            href={`#photo-pin-${id}`}
+            className={label === litRef ? 'pin-above pin-above-pointed' : 'pin-above'}
+            aria-hidden="true"
+          />
         ))}
     </>
   );
