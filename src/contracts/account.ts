@@ -12,6 +12,8 @@ export const AccountForm = z.discriminatedUnion('do', [
       current: CurrentPassword,
       password: Password,
       again: z.string().max(200),
+      /** Ticked: API tokens end too. */
+      tokens: z.literal('revoke').optional(),
     })
     .refine(twice, sameTwice),
   z.object({ do: z.literal('everywhere') }),

@@ -2,7 +2,7 @@
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import { audit } from '@/db/schema/people';
-import { insertLink } from '../fixtures/rows';
+import { insertLink, insertToken } from '../fixtures/rows';
 import { cookieOf, openStaffShop, PASSWORD, type StaffShop } from '../fixtures/staff';
 
 const NEW = 'a new password for tests';
@@ -35,6 +35,33 @@ test('a new password takes the current one, keeps this session and ends the othe
   expect((await shop.signIn(email, { password: NEW })).status).toBe(204);
   expect((await shop.ask({ method: 'GET', path: `/reset/${link}` })).status).toBe(410);
   expect((await shop.letter(email)).subject).toMatch(/was changed/);
+});
+
+test('a new password keeps API tokens and names them, or revokes them when told so', async () => {
+  const { cookie, id } = await signedIn();
+  expect(await page(cookie)).not.toContain('name="tokens"');
+  const tokens = [
+    await insertToken(shop.db, id, ['read']),
+    await insertToken(shop.db, id, ['read']),
+  ];
+  const works = () =>
+    Promise.all(
+      tokens.map(async ({ token }) => {
+        const headers = { authorization: `Bearer ${token}` };
+        return (await shop.ask({ method: 'GET', path: '/api/tickets', headers })).status;
+      }),
+    );
+  expect(await page(cookie)).toContain('2 API tokens stay valid.');
+  expect((await post(cookie, change)).status).toBe(303);
+  expect(await works()).toEqual([200, 200]);
+  expect(await page(cookie, '/account?done=password')).toContain(
+    'Your other sessions were ended. 2 API tokens stay valid.',
+  );
+  const again = { do: 'password', current: NEW, password: PASSWORD, again: PASSWORD };
+  const answer = await post(cookie, { ...again, tokens: 'revoke' });
+  expect(answer.headers.get('location')).toBe('/account?done=password-tokens');
+  expect(await works()).toEqual([401, 401]);
+  expect(await page(cookie)).not.toContain('stay valid');
 });
 
 test.each([

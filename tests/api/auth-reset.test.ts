@@ -4,7 +4,7 @@ import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import { outbox } from '@/db/schema/outbox';
 import { audit, oneTimeTokens, users } from '@/db/schema/people';
-import { insertLink } from '../fixtures/rows';
+import { insertLink, insertToken } from '../fixtures/rows';
 import { cookieOf, openStaffShop, type StaffShop } from '../fixtures/staff';
 
 const NEW = 'another password for tests';
@@ -53,6 +53,22 @@ test('the letter’s link sets a new password once and ends every session', asyn
   const lines = await shop.db.select().from(audit).where(eq(audit.actorId, person.id));
   expect(lines.map(({ action }) => action)).toContain('password.reset');
   expect((await shop.letter(person.email, 1)).subject).toMatch(/was changed/);
+});
+
+test('a new password by link revokes the API tokens, and says so', async () => {
+  const { email, id } = await shop.hire('technician');
+  const { token } = await insertToken(shop.db, id, ['read']);
+  const byToken = async () => {
+    const headers = { authorization: `Bearer ${token}` };
+    return (await shop.ask({ method: 'GET', path: '/api/tickets', headers })).status;
+  };
+  expect(await byToken()).toBe(200);
+  await forgot(email);
+  expect((await set(await linkTo(email))).status).toBe(303);
+  expect(await byToken()).toBe(401);
+  expect((await shop.letter(email, 1)).text).toContain('Your API tokens were revoked.');
+  const lines = await shop.db.select().from(audit).where(eq(audit.actorId, id));
+  expect(lines.at(-1)).toMatchObject({ action: 'password.reset', detail: { tokensRevoked: 1 } });
 });
 
 test('opening the link uses nothing: mail programs do that', async () => {

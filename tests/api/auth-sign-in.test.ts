@@ -3,7 +3,6 @@ import { createHash } from 'node:crypto';
 import { eq } from 'drizzle-orm';
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import { audit, sessions, users } from '@/db/schema/people';
-import { freshAddress } from '../fixtures/ask';
 import { cookieOf, openStaffShop, PASSWORD, type StaffShop } from '../fixtures/staff';
 
 let shop: StaffShop;
@@ -29,7 +28,7 @@ test('the address is taken in any case and with spaces round it', async () => {
 
 test('the cookie is out of reach of scripts and of other sites, and lasts two weeks', async () => {
   const { email } = await shop.hire('counter');
-  const cookie = (await shop.signIn(email)).headers.get('set-cookie') ?? '';
+  const cookie = (await shop.signIn(email)).headers.getSetCookie()[0] ?? '';
   expect(cookie).toMatch(/^mw_session=[\w-]{43};/);
   const attributes = cookie.split('; ').slice(1).toSorted();
   expect(attributes).toEqual(['HttpOnly', 'Max-Age=1209600', 'Path=/', 'SameSite=Lax']);
@@ -73,43 +72,11 @@ test('wrong password, unknown, disabled, invited and a customer’s address are 
   expect(seen[0]).toMatch(/^401 .*E-mail or password is wrong\./);
 });
 
-test('after eight wrong tries an account waits, even for the right password, and others do not', async () => {
-  const { email } = await shop.hire('counter');
-  const other = await shop.hire('counter');
-  const tries = Array.from({ length: 8 }, () => shop.signIn(email, { password: 'wrong' }));
-  expect((await Promise.all(tries)).map(({ status }) => status)).toEqual(Array(8).fill(401));
-  const locked = await shop.signIn(email);
-  expect(locked.status).toBe(429);
-  const seconds = Number(locked.headers.get('retry-after'));
-  expect(seconds).toBeGreaterThan(800);
-  expect(seconds).toBeLessThanOrEqual(900);
-  expect((await shop.signIn(other.email)).status).toBe(204);
-});
-
-test('an account that is not there waits alike', async () => {
-  const tries = Array.from({ length: 8 }, () => shop.signIn('ghost@staff.example'));
-  expect((await Promise.all(tries)).every(({ status }) => status === 401)).toBe(true);
-  expect((await shop.signIn('ghost@staff.example')).status).toBe(429);
-});
-
 test('right passwords use up no tries', async () => {
   const { email } = await shop.hire('counter');
   for (let i = 0; i < 7; i++) await shop.signIn(email, { password: 'wrong' });
   expect((await shop.signIn(email)).status).toBe(204);
   for (let i = 0; i < 7; i++) await shop.signIn(email, { password: 'wrong' });
-  expect((await shop.signIn(email)).status).toBe(204);
-});
-
-test('sixty wrong tries from one address stop it, whoever is tried; elsewhere goes on', async () => {
-  const { email } = await shop.hire('counter');
-  const from = freshAddress();
-  for (let i = 0; i < 60; i += 10) {
-    const tries = Array.from({ length: 10 }, (_, n) =>
-      shop.signIn(`many-${i + n}@staff.example`, { from }),
-    );
-    expect((await Promise.all(tries)).every(({ status }) => status === 401)).toBe(true);
-  }
-  expect((await shop.signIn(email, { from })).status).toBe(429);
   expect((await shop.signIn(email)).status).toBe(204);
 });
 
@@ -119,6 +86,7 @@ test('signing out ends the session for every copy of its cookie, and clears it',
   const out = await shop.ask({ method: 'DELETE', path: '/api/session', headers: { cookie } });
   expect(out.status).toBe(204);
   expect(out.headers.get('set-cookie')).toMatch(/^mw_session=;.*Max-Age=0/);
+  expect(out.headers.get('clear-site-data')).toBe('"cache"');
   expect((await asks(cookie)).status).toBe(401);
 });
 

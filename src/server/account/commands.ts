@@ -4,7 +4,7 @@ import { inTransaction, type Database } from '@/db/client';
 import { users } from '@/db/schema/people';
 import { record } from '../audit/commands';
 import type { Granted } from '../auth/actor';
-import { endSessions } from '../auth/end-access';
+import { endSessions, revokeTokens } from '../auth/end-access';
 import { voidOneTime } from '../auth/one-time';
 import { checkPassword, hashPassword } from '../auth/passwords';
 import { newPublicId } from '../auth/secrets';
@@ -17,15 +17,15 @@ import { shopOf } from '../shop';
 export type Self = Granted<'account.own'>;
 
 /**
- * Whether this is the person's password, for changes that a borrowed screen must not make. Wrong ones count like wrong
- * sign-ins. Answers with the hash it was checked against.
+ * Whether this is the person's password, for changes that a borrowed screen must not make. Wrong ones are
+ * counted for the person, whom nobody but they can hold up so. Answers with the hash it was checked against.
  */
 export async function confirmPassword(
   app: Runtime,
   actor: Self,
   password: string,
 ): Promise<Outcome<string>> {
-  const stop = await app.limits.take('sign-in', actor.email);
+  const stop = await app.limits.take('confirm', String(actor.id));
   if (stop) return stop;
   const [row] = await app.db
     .select({ hash: users.passwordHash })
@@ -34,7 +34,7 @@ export async function confirmPassword(
   const hash = row?.hash ?? null;
   if (!(await checkPassword(hash, password)) || hash === null)
     return refuseField('current', 'Not your password: type the one you sign in with.');
-  await app.limits.clear('sign-in', actor.email);
+  await app.limits.clear('confirm', String(actor.id));
   return done(hash);
 }
 
@@ -61,11 +61,20 @@ export async function rename(
 const changedMeanwhile = (): Refusal =>
   refuseField('current', 'Your password was changed meanwhile: type the new one.');
 
-/** Changes one's own password; the session of `sessionCookie` stays, all others end. */
+/**
+ * Changes one's own password; the session of `sessionCookie` stays, all others end. API tokens stay valid unless
+ * `revoke` says otherwise: a plain change must not stop the programs that work with them.
+ */
 export async function changePassword(
   app: Runtime,
   actor: Self,
-  input: { current: string; password: string; sessionCookie: string; requestId: string },
+  input: {
+    current: string;
+    password: string;
+    revoke: boolean;
+    sessionCookie: string;
+    requestId: string;
+  },
   now: Date,
 ): Promise<Outcome<null>> {
   const { sessionCookie, requestId } = input;
@@ -79,11 +88,13 @@ export async function changePassword(
       .where(and(eq(users.id, actor.id), eq(users.passwordHash, confirmed.value)));
     if (result.affectedRows !== 1) return changedMeanwhile();
     await endSessions(tx, actor.id, sessionCookie);
+    const tokensRevoked = input.revoke ? await revokeTokens(tx, actor.id, now) : 0;
     await voidOneTime(tx, 'reset', actor.id, now);
     const object = `person:${actor.id}`;
-    await record(tx, { actor, action: 'password.changed', object, requestId }, now);
+    const detail = { tokensRevoked };
+    await record(tx, { actor, action: 'password.changed', object, detail, requestId }, now);
     const shop = shopOf(app.settings);
-    const mail = passwordChangedMail(shop, actor);
+    const mail = passwordChangedMail(shop, actor, tokensRevoked);
     await promise(tx, shop.secret, `password:${newPublicId()}`, { kind: 'mail', mail }, now);
     return done(null);
   });

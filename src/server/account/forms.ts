@@ -28,9 +28,10 @@ export async function accountByForm(
       : refusedForm(form.typed, renamed, REFUSALS[renamed.kind].status);
   }
   const { current, password } = given;
-  const input = { current, password, sessionCookie, requestId };
+  const revoke = given.tokens === 'revoke';
+  const input = { current, password, revoke, sessionCookie, requestId };
   const changed = await changePassword(app, actor, input, now);
   if (!changed.ok) return refusedForm(form.typed, changed, REFUSALS[changed.kind].status);
   app.worker?.nudge();
-  return { ok: true, location: '/account?done=password' };
+  return { ok: true, location: `/account?done=${revoke ? 'password-tokens' : 'password'}` };
 }

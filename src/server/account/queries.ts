@@ -1,6 +1,7 @@
-import { eq, sql } from 'drizzle-orm';
+import { count, eq, sql } from 'drizzle-orm';
 import type { Queryable } from '@/db/client';
-import { users } from '@/db/schema/people';
+import { apiTokens, users } from '@/db/schema/people';
+import { inUse } from '../tokens/queries';
 
 /** What a person sees of their own account. */
 export async function readAccount(db: Queryable, id: number) {
@@ -13,6 +14,7 @@ export async function readAccount(db: Queryable, id: number) {
     })
     .from(users)
     .where(eq(users.id, id));
+  const [held] = await db.select({ n: count() }).from(apiTokens).where(inUse(id));
   if (!row) throw new Error('The account of the person signed in is not there.');
-  return row;
+  return { ...row, tokens: held?.n ?? 0 };
 }

@@ -10,7 +10,7 @@ import { done, refuse, type Done, type Outcome, type Refusal } from '../refusal'
 import type { Runtime } from '../runtime';
 import { shopOf } from '../shop';
 import type { Shop } from '../tickets/types';
-import { endSessions } from './end-access';
+import { endSessions, revokeTokens } from './end-access';
 import { issueOneTime, readOneTime, useOneTime, voidOneTime } from './one-time';
 import { hashPassword } from './passwords';
 import { newPublicId } from './secrets';
@@ -66,7 +66,10 @@ export async function readReset(
   return person ?? null;
 }
 
-/** Sets a new password by a link and ends all sessions of the person. */
+/**
+ * Sets a new password by a link, ends all sessions of the person and revokes their API tokens: who resets may do so
+ * because somebody else had the old one, and a token made with it would outlive it.
+ */
 export async function resetPassword(
   db: Database,
   input: { token: string; password: string; requestId: string },
@@ -86,14 +89,16 @@ export async function resetPassword(
     if (!person) return linkServed();
     await tx.update(users).set({ passwordHash }).where(eq(users.id, id));
     await endSessions(tx, id);
+    const tokensRevoked = await revokeTokens(tx, id, now);
     await voidOneTime(tx, 'reset', id, now);
     const { requestId } = input;
+    const detail = { tokensRevoked };
     await record(
       tx,
-      { actor: person, action: 'password.reset', object: `person:${id}`, requestId },
+      { actor: person, action: 'password.reset', object: `person:${id}`, detail, requestId },
       now,
     );
-    const mail = passwordChangedMail(shop, person);
+    const mail = passwordChangedMail(shop, person, tokensRevoked);
     await promise(tx, shop.secret, `password:${newPublicId()}`, { kind: 'mail', mail }, now);
     return done(null);
   });

@@ -42,6 +42,9 @@ function hashing(inner: Adapter): Adapter {
 
 const COOKIE = 'mw_session';
 
+/** With the end of a session: the browser lets go of the photos and pages it kept. */
+export const FORGET = { 'clear-site-data': '"cache"' } as const;
+
 export type SessionKeeper = ReturnType<typeof sessionKeeper>;
 
 /** Opens, reads and ends sessions. */

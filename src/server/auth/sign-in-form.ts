@@ -48,21 +48,22 @@ const unread = (form: Extract<FormResult<unknown>, { ok: false }>): SignInStep =
   },
 });
 
-/** Reads the sign-in form: the `Set-Cookie` value once somebody is in, else what the page shows next. */
+/** Reads the sign-in form: the `Set-Cookie` values once somebody is in, else what the page shows next. */
 export async function signInByForm(
   app: Runtime,
   request: Request,
   about: About,
   now: Date,
-): Promise<{ cookie: string } | SignInStep> {
+): Promise<{ cookies: string[] } | SignInStep> {
   const form = await readFormAs(request, SignInForm);
   if (!form.ok) return unread(form);
   const given = form.value;
+  const asker = { request, address: about.address, requestId: about.requestId };
   let account: Account | null;
   let shown: SignInStep = FIRST_STEP;
   if (given.step === 'password') {
     shown = { ...FIRST_STEP, email: given.email };
-    const known = await checkAccount(app, given, about.address);
+    const known = await checkAccount(app, given, asker, now);
     if (!known.ok) return refused(shown, known);
     account = known.value;
     if (account.totpSecret !== null)
@@ -72,9 +73,9 @@ export async function signInByForm(
     account = await readHalf(app, given.note, now);
     if (!account)
       return { ...FIRST_STEP, status: 401, problem: 'Five minutes are over: sign in again.' };
-    const right = await checkCode(app, account, given.totp, now);
+    const right = await checkCode(app, account, given.totp, asker, now);
     if (!right.ok) return refused(shown, right);
   }
-  const cookie = await openSession(app, account, about, now);
-  return cookie.ok ? { cookie: cookie.value } : refused(FIRST_STEP, cookie);
+  const opened = await openSession(app, account, { ...about, request }, now);
+  return opened.ok ? { cookies: opened.value } : refused(FIRST_STEP, opened);
 }

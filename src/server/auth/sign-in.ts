@@ -5,6 +5,9 @@ import type { StaffRole } from '@/domain/people';
 import { record } from '../audit/commands';
 import { done, refuse, type Outcome, type Refusal } from '../refusal';
 import type { Runtime } from '../runtime';
+import { takeGuess, type Asker } from './guessing';
+import { rememberBrowser } from './known-browser';
+import { tellLocked } from './locked';
 import { checkPassword } from './passwords';
 import { takeCode } from './totp';
 
@@ -12,6 +15,7 @@ import { takeCode } from './totp';
 export type Account = {
   id: number;
   name: string;
+  email: string;
   role: StaffRole;
   passwordHash: string;
   totpSecret: string | null;
@@ -20,6 +24,7 @@ export type Account = {
 const columns = {
   id: users.id,
   name: users.name,
+  email: users.email,
   role: users.role,
   passwordHash: users.passwordHash,
   totpSecret: users.totpSecret,
@@ -42,21 +47,19 @@ export async function openAccount(
 
 const wrong = (): Refusal => refuse('signed-out', 'E-mail or password is wrong.');
 
-/** The first step: the password. Wrong ones are counted for the account and for the address they come from. */
+/** The first step: the password. Wrong ones are counted (guessing.ts), whether or not there is such an account. */
 export async function checkAccount(
   app: Runtime,
   input: { email: string; password: string },
-  address: string,
+  asker: Asker,
+  now: Date,
 ): Promise<Outcome<Account>> {
   const { email, password } = input;
-  const { limits } = app;
-  const stop =
-    (await limits.take('sign-in-address', address)) ?? (await limits.take('sign-in', email));
-  if (stop) return stop;
+  const guess = await takeGuess(app, { kind: 'sign-in', subject: email }, asker, now);
+  if (!guess.ok) return guess;
   const account = await openAccount(app, { email });
   if (!(await checkPassword(account?.passwordHash ?? null, password)) || !account) return wrong();
-  await limits.giveBack('sign-in-address', address);
-  await limits.clear('sign-in', email);
+  await guess.value();
   return done(account);
 }
 
@@ -68,27 +71,36 @@ export async function checkCode(
   app: Runtime,
   account: Account,
   code: string | undefined,
+  asker: Asker,
   now: Date,
 ): Promise<Outcome<Account>> {
   const { id, totpSecret } = account;
   if (totpSecret === null) return done(account);
   if (code === undefined)
     return codeRefused('Your second factor is on: the six-digit code is needed too.');
-  const stop = await app.limits.take('totp', String(id));
-  if (stop) return stop;
+  const { refusal, first } = await app.limits.tryTake('totp', String(id));
+  if (refusal) {
+    const what = 'somebody with the password, at the second factor';
+    const about = { from: asker.address, what, requestId: asker.requestId };
+    if (first) await tellLocked(app, { kind: 'sign-in', subject: account.email }, about, now);
+    return refusal;
+  }
   if (!(await takeCode(app.db, app.settings.secret, { id, totpSecret }, code, now)))
     return codeRefused('The code is wrong or was used: wait for the next one and type that.');
   await app.limits.clear('totp', String(id));
   return done(account);
 }
 
-/** Opens the session and ends the one that was open here before. Answers with the `Set-Cookie` value. */
+/**
+ * Opens the session and ends the one that was open here before. Answers with the `Set-Cookie` values: the session, and
+ * that this browser is known at this account from now on.
+ */
 export async function openSession(
   app: Runtime,
   account: Account,
-  about: { formerCookie: string | undefined; requestId: string },
+  about: { formerCookie: string | undefined; request: Request; requestId: string },
   now: Date,
-): Promise<Outcome<string>> {
+): Promise<Outcome<string[]>> {
   await app.sessions.end(about.formerCookie);
   const cookie = await app.sessions.open(account.id);
   // A reset or a disabling in the same instant ended the sessions before this one was there.
@@ -107,5 +119,6 @@ export async function openSession(
     },
     now,
   );
-  return done(cookie);
+  const door = { kind: 'sign-in', subject: account.email } as const;
+  return done([cookie, rememberBrowser(app.settings, about.request, door)]);
 }

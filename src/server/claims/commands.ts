@@ -4,6 +4,9 @@ import { inTransaction, type Database } from '@/db/client';
 import { users } from '@/db/schema/people';
 import { customers } from '@/db/schema/shop';
 import { tickets } from '@/db/schema/tickets';
+import { endClaimSessions } from '../auth/end-access';
+import { takeGuess, type Asker } from '../auth/guessing';
+import { rememberBrowser } from '../auth/known-browser';
 import type { Limits } from '../auth/limits';
 import { issueOneTime, useOneTime } from '../auth/one-time';
 import { hashClaimCode, sameHash } from '../auth/secrets';
@@ -13,6 +16,7 @@ import { customersByEmail } from '../customers/queries';
 import { linkMail } from '../mail/letters';
 import { promise } from '../outbox/commands';
 import { done, refuse, type Outcome } from '../refusal';
+import type { Runtime } from '../runtime';
 import type { Shop } from '../tickets/types';
 
 const wrong = () =>
@@ -21,29 +25,32 @@ const wrong = () =>
     'Ticket number and claim code don’t belong together: check both on your receipt.',
   );
 
-/** Opens a session that sees this ticket alone. Wrong tries are limited per address, and per ticket. */
+/** Opens a session that sees this ticket alone. Wrong tries are counted (auth/guessing.ts). */
 export async function enterByClaim(
-  app: { db: Database; limits: Limits; sessions: SessionKeeper },
+  app: Runtime,
   input: { number: string; code: string },
-  secret: string,
-  address: string,
-): Promise<Outcome<{ cookie: string; number: string }>> {
-  const { limits } = app;
-  const here = `${input.number} ${address}`;
-  const tooMany =
-    (await limits.take('claim-address', address)) ??
-    (await limits.take('claim', here)) ??
-    (await limits.take('claim-ticket', input.number));
-  if (tooMany) return tooMany;
+  asker: Asker,
+  now: Date,
+): Promise<Outcome<{ cookies: string[]; number: string }>> {
+  const { number } = input;
+  const { secret } = app.settings;
+  const door = { kind: 'claim', subject: number } as const;
+  const guess = await takeGuess(app, door, asker, now);
+  if (!guess.ok) return guess;
   const [ticket] = await app.db.select().from(tickets).where(eq(tickets.number, input.number));
   const given = hashClaimCode(secret, input.number, input.code);
   if (!ticket || !sameHash(ticket.claimHash, given)) return wrong();
   const account = await accountOf(app.db, ticket.customerId);
   if (account === null) throw new Error(`Customer ${ticket.customerId} has no account.`);
-  await limits.giveBack('claim-address', address);
-  await limits.giveBack('claim-ticket', input.number);
-  await limits.clear('claim', here);
-  return done({ cookie: await app.sessions.open(account, ticket.id), number: ticket.number });
+  await guess.value();
+  const cookie = await app.sessions.open(account, ticket.id);
+  // A new code made in the same instant ended the sessions before this one was there.
+  const [still] = await app.db.select().from(tickets).where(eq(tickets.id, ticket.id));
+  if (still?.claimHash !== ticket.claimHash) {
+    await endClaimSessions(app.db, ticket.id);
+    return wrong();
+  }
+  return done({ cookies: [cookie, rememberBrowser(app.settings, asker.request, door)], number });
 }
 
 /** Mails a one-time link to every customer with this e-mail. The answer is the same when there is none. */

@@ -46,13 +46,14 @@ ${shop.address}
 }
 
 /** Told after the fact, so that a change by somebody else does not go unnoticed. */
-export function passwordChangedMail(shop: Shop, to: Colleague): Mail {
+export function passwordChangedMail(shop: Shop, to: Colleague, tokensRevoked: number): Mail {
+  const tokens = tokensRevoked > 0 ? ' Your API tokens were revoked.' : '';
   return {
     to: to.email,
     subject: `Your password for ${shop.name} was changed`,
     text: `Dear ${to.name},
 
-your password was changed just now, and your other sessions were ended.
+your password was changed just now, and your other sessions were ended.${tokens}
 
 If it was not you, ask for a new one at once and tell the owner:
 ${shop.origin}/forgot
