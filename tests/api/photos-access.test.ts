@@ -63,6 +63,17 @@ test('a picture that is no longer shared is closed to its customer at once', asy
   expect(await see()).toBe(404);
 });
 
+test('a customer’s browser shows nothing it kept without asking whether it still may', async () => {
+  const path = `/api/photos/${shared}/page`;
+  const first = await shop.call('annaByClaimCode', 'GET', path);
+  expect(first.headers.get('cache-control')).toBe('private, no-cache');
+  expect(first.headers.get('vary')).toContain('cookie');
+  const headers = { 'if-none-match': first.headers.get('etag') ?? '' };
+  expect((await shop.call('annaByClaimCode', 'GET', path, { headers })).status).toBe(304);
+  expect((await shop.call('bruno', 'GET', path, { headers })).status).toBe(404);
+  expect((await shop.call(null, 'GET', path, { headers })).status).toBe(401);
+});
+
 const NEW = { fileName: 'a.jpg', type: 'image/jpeg', bytes: 5, side: 'front', phase: 'before' };
 const changes = (): [string, string, object | undefined][] => [
   ['POST', `/api/tickets/${shop.anna.ticket.number}/photos`, NEW],

@@ -30,7 +30,14 @@ export type PictureAsked = {
   ifNoneMatch: string | null;
 };
 
-/** Answers a variant of a photo. What an address answers never changes, so browsers may keep it. */
+/**
+ * How long a browser may show what it keeps without asking. Customers may sit at a borrowed screen, and a photo may be
+ * shared with them no longer: theirs is asked about every time. Staff turn photos over all day.
+ */
+const keeping = (actor: Actor | null) =>
+  actor?.kind === 'staff' ? 'private, max-age=600' : 'private, no-cache';
+
+/** Answers a variant of a photo; what an address answers never changes, so an ETag saves sending it again. */
 export async function servePicture(
   { db, store, log }: PhotoShop,
   actor: Actor | null,
@@ -44,8 +51,9 @@ export async function servePicture(
   const etag = `"${variant.key.slice(variant.key.lastIndexOf('/') + 1)}"`;
   const headers = {
     etag,
-    'cache-control': 'private, max-age=31536000, immutable',
-    vary: 'accept',
+    'cache-control': keeping(actor),
+    // The answer is for who asked: the next person at this browser has another cookie.
+    vary: 'accept, cookie, authorization',
   };
   if (tagsIn(asked.ifNoneMatch).includes(etag))
     return done(new Response(null, { status: 304, headers }));
