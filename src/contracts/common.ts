@@ -45,6 +45,10 @@ export const Email = z
   .max(190, 'Longer than 190 characters: shorten it.')
   .pipe(z.email('Not an e-mail address: something like name@example.org is needed.'));
 
+/** What may be left empty: a form sends the empty text for nothing. A union would not say what is wrong with the rest. */
+export const orNothing = <T extends z.ZodType>(one: T) =>
+  z.preprocess((given) => (given === '' ? undefined : given), one.optional()).optional();
+
 /** Internal keys as they stand in addresses. */
 export const Id = z.coerce.number().int().positive().max(Number.MAX_SAFE_INTEGER);
 

@@ -2,16 +2,14 @@
 import * as z from 'zod/v4';
 import { INCIDENTS } from '@/domain/parts/kinds';
 import { ACCESSORY_CODES, SYMPTOM_CODES } from '@/domain/tickets/vocabulary';
-import { DateOnly, Email, Id, line, prose } from './common';
+import { DateOnly, Email, Id, line, orNothing, prose } from './common';
 import type { Intake } from './tickets';
-
-const nothing = z.literal('').transform(() => undefined);
 
 export const IntakeForm = z
   .object({
-    customerId: Id.or(nothing).optional(),
+    customerId: orNothing(Id),
     name: line(120).default(''),
-    email: Email.or(nothing).optional(),
+    email: orNothing(Email),
     phone: line(40).default(''),
     address: line(300).default(''),
     maker: line(80, 1),
@@ -23,7 +21,7 @@ export const IntakeForm = z
     accessories: z.array(z.enum(ACCESSORY_CODES)).default([]),
     accessoryText: line(300).default(''),
     condition: prose(1000).default(''),
-    promisedOn: DateOnly.or(nothing).optional(),
+    promisedOn: orNothing(DateOnly),
   })
   .refine((f) => f.customerId !== undefined || f.name !== '', {
     path: ['name'],

@@ -12,6 +12,7 @@ import {
   TicketNumber,
   line,
   listOf,
+  orNothing,
   prose,
 } from './common';
 import { defineRoute } from './route';
@@ -21,15 +22,21 @@ const withBackwards = (names: readonly string[]) =>
   z.enum([...names, ...names.map((n) => `-${n}`)] as [string, ...string[]]);
 
 /** A customer found (`id`) or new; contact data of a found one are not changed here. */
-export const IntakeCustomer = z.union([
-  z.object({ id: Id }),
-  z.object({
-    name: line(120, 1),
-    email: Email.or(z.literal('').transform(() => undefined)).optional(),
+export const IntakeCustomer = z
+  .object({
+    id: Id.optional(),
+    name: line(120, 1).optional(),
+    email: orNothing(Email),
     phone: line(40).default(''),
     address: line(300).default(''),
-  }),
-]);
+  })
+  .transform(({ id, name, ...reached }, context) => {
+    if (id !== undefined) return { id };
+    if (name !== undefined) return { name, ...reached };
+    const message = 'No customer was given: the id of one, or the name of a new one is needed.';
+    context.addIssue({ code: 'custom', path: ['name'], message });
+    return z.NEVER;
+  });
 
 export const Intake = z.object({
   customer: IntakeCustomer,

@@ -2,7 +2,7 @@ import { eq } from 'drizzle-orm';
 import type { Queryable } from '@/db/client';
 import { customers } from '@/db/schema/shop';
 import { users } from '@/db/schema/people';
-import { absent, done, type Outcome } from '../refusal';
+import { done, refuseField, type Outcome } from '../refusal';
 import { customerById, customersByEmail } from './queries';
 
 export type CustomerInput =
@@ -21,7 +21,9 @@ export async function customerForIntake(
 ): Promise<Outcome<IntakeCustomer>> {
   if ('id' in input) {
     const found = await customerById(tx, input.id);
-    return found ? done(found) : absent('customer');
+    return found
+      ? done(found)
+      : refuseField('customer.id', 'There is no such customer: find one, or write a new one.');
   }
   const email = input.email ?? null;
   if (email !== null) {
