@@ -24,6 +24,8 @@ type Answered =
       typed: Typed;
       error: string | undefined;
       status: number;
+      /** Seconds to wait, when the refusal names some. */
+      retryAfter?: number | undefined;
     };
 
 /** Handles the forms of the status page. */
@@ -51,6 +53,7 @@ export async function answerStatusForm(
     typed: form.typed,
     error: undefined,
     status: REFUSALS[r.kind].status,
+    retryAfter: r.retryAfter,
   });
   const { value } = form;
   if (value.do === 'message') {
