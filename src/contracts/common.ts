@@ -65,10 +65,10 @@ export const Moment = z.iso.datetime();
 
 export const Money = z.object({ amount: z.int(), currency: z.string().length(3) });
 
-/** `?limit&cursor&sort` of every list. The cursor is opaque. */
+/** `?limit&cursor&sort` of every list. The cursor is opaque; it may hold the longest name, in any script. */
 export const ListQuery = z.object({
   limit: z.coerce.number().int().min(1).max(200).default(50),
-  cursor: z.string().max(200).optional(),
+  cursor: z.string().max(800).optional(),
   sort: z.string().max(40).optional(),
 });
 

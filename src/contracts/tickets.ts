@@ -112,6 +112,7 @@ export const QueueQuery = ListQuery.extend({
   who: z.enum(['all', 'mine', 'nobody']).default('all'),
   board: z.string().trim().max(60).default(''),
   sort: withBackwards(QUEUE_SORTS).default('promised'),
+  format: z.enum(['json', 'csv']).optional(),
 });
 export type QueueQuery = z.output<typeof QueueQuery>;
 
@@ -135,6 +136,7 @@ export const ticketRoutes = {
     query: QueueQuery,
     answer: listOf(TicketRow),
     status: 200,
+    csv: true,
   }),
   intake: defineRoute({
     method: 'POST',

@@ -1,5 +1,5 @@
 /** Paging by the last row given: a list that grows meanwhile neither repeats nor loses a row. */
-import { sql, type AnyColumn, type SQL } from 'drizzle-orm';
+import { Column, is, sql, type AnyColumn, type SQL } from 'drizzle-orm';
 import { done, refuseField, type Outcome } from '../refusal';
 
 /** Where a page ended: the sorted column's value and the key of its last row. */
@@ -43,15 +43,15 @@ export function readCursor(
   return done({ value: new Date(at), id });
 }
 
-/** The rows after a place. `column` must not hold nulls; `key` breaks ties in the same direction. */
+/** The rows after a place. `column`, or what is computed of it, must not be null; `key` breaks ties the same way. */
 export function afterPlace(
-  column: AnyColumn,
+  column: AnyColumn | SQL,
   key: AnyColumn,
   { value, id }: Place,
   descending: boolean,
 ): SQL {
   const past = sql.raw(descending ? '<' : '>');
-  const given = sql.param(value, column);
+  const given = is(column, Column) ? sql.param(value, column) : sql.param(value);
   return sql`(${column} ${past} ${given} OR (${column} = ${given} AND ${key} ${past} ${id}))`;
 }
 

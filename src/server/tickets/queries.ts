@@ -12,6 +12,7 @@ import {
   not,
   or,
   sql,
+  type AnyColumn,
   type SQL,
 } from 'drizzle-orm';
 import type { Queryable } from '@/db/client';
@@ -21,6 +22,7 @@ import { messages, ticketCautions, ticketEvents, ticketNotes, tickets } from '@/
 import type { QueueQuery } from '@/contracts/tickets';
 import { CLOSED_STAGES, STAGES } from '@/domain/tickets/stages';
 import { containing } from '../customers/queries';
+import { afterPlace, type Held, type Place } from '../http/cursor';
 
 const bench = alias(users, 'bench');
 
@@ -64,7 +66,7 @@ const joined = (db: Queryable) =>
     .leftJoin(boards, eq(boards.id, tickets.boardId))
     .leftJoin(bench, eq(bench.id, tickets.assignedTo));
 
-export type TicketLine = Awaited<ReturnType<typeof queue>>['rows'][number];
+export type TicketLine = Awaited<ReturnType<typeof joined>>[number];
 
 function conditions(query: QueueQuery, me: number): SQL | undefined {
   const closed = [...CLOSED_STAGES];
@@ -95,22 +97,60 @@ function conditions(query: QueueQuery, me: number): SQL | undefined {
   );
 }
 
-function order(sort: string): SQL[] {
-  const backwards = sort.startsWith('-');
-  const way = (column: SQL) => (backwards ? desc(column) : asc(column));
-  const stagePlace = sql`FIELD(${tickets.stage}, ${sql.join(
-    STAGES.map((s) => sql`${s}`),
+type Order = { by: AnyColumn | SQL; held: Held; of: (t: TicketLine) => Place['value'] };
+
+/** What the queue is in order of. Without a promise a ticket comes after those that have one, either way. */
+function orderOf(sort: string): Order & { descending: boolean } {
+  const descending = sort.startsWith('-');
+  const never = descending ? '0000-00-00' : '9999-99-99';
+  const stages = sql.join(
+    STAGES.map((stage) => sql`${stage}`),
     sql`, `,
-  )})`;
-  const by: Record<string, SQL[]> = {
-    // Without a promise a ticket comes after those that have one.
-    promised: [asc(sql`${tickets.promisedOn} IS NULL`), way(sql`${tickets.promisedOn}`)],
-    received: [way(sql`${tickets.receivedAt}`)],
-    number: [way(sql`${tickets.number}`)],
-    customer: [way(sql`${customers.name}`)],
-    stage: [way(stagePlace)],
+  );
+  const orders: Record<string, Order> = {
+    promised: {
+      by: sql`COALESCE(CAST(${tickets.promisedOn} AS CHAR), ${never})`,
+      held: 'string',
+      of: (t) => t.promisedOn ?? never,
+    },
+    received: { by: tickets.receivedAt, held: 'date', of: (t) => t.receivedAt },
+    number: { by: tickets.number, held: 'string', of: (t) => t.number },
+    customer: { by: customers.name, held: 'string', of: (t) => t.customerName },
+    stage: {
+      by: sql`FIELD(${tickets.stage}, ${stages})`,
+      held: 'number',
+      of: (t) => STAGES.indexOf(t.stage) + 1,
+    },
   };
-  return [...(by[sort.replace('-', '')] ?? []), asc(tickets.id)];
+  const order = orders[sort.replace('-', '')];
+  if (!order) throw new RangeError(`Order given as ${sort}; one of the queue is needed.`);
+  return { ...order, descending };
+}
+
+/** What the column holds that the queue is in order of. */
+export const heldBy = (sort: string): Held => orderOf(sort).held;
+
+/** A ticket's place in an order of the queue. */
+export const placeOfTicket = (sort: string, ticket: TicketLine): Place => ({
+  value: orderOf(sort).of(ticket),
+  id: ticket.id,
+});
+
+/** The tickets that match, in order: from a place on, or from a number of rows on. */
+export function queueRows(
+  db: Queryable,
+  query: QueueQuery,
+  me: number,
+  part: { limit: number; after?: Place | undefined; offset?: number },
+): Promise<TicketLine[]> {
+  const { by, descending } = orderOf(query.sort);
+  const way = descending ? desc : asc;
+  const after = part.after && afterPlace(by, tickets.id, part.after, descending);
+  return joined(db)
+    .where(and(conditions(query, me), after))
+    .orderBy(way(by), way(tickets.id))
+    .limit(part.limit)
+    .offset(part.offset ?? 0);
 }
 
 /** One page of the queue and how many there are in all. */
@@ -121,13 +161,8 @@ export async function queue(
   limit: number,
   offset: number,
 ) {
-  const where = conditions(query, me);
   const [rows, [total]] = await Promise.all([
-    joined(db)
-      .where(where)
-      .orderBy(...order(query.sort))
-      .limit(limit)
-      .offset(offset),
+    queueRows(db, query, me, { limit, offset }),
     db
       .select({ n: count() })
       .from(tickets)
@@ -135,7 +170,7 @@ export async function queue(
       .innerJoin(models, eq(models.id, instruments.modelId))
       .innerJoin(customers, eq(customers.id, tickets.customerId))
       .leftJoin(boards, eq(boards.id, tickets.boardId))
-      .where(where),
+      .where(conditions(query, me)),
   ]);
   return { rows, total: total?.n ?? 0 };
 }

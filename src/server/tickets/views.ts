@@ -1,13 +1,22 @@
 /** Tickets as the API shows them. */
 import type { Queryable } from '@/db/client';
-import type { QueueQuery } from '@/contracts/tickets';
+import type { QueueQuery, TicketRow } from '@/contracts/tickets';
 import type { Role } from '@/domain/people';
 import { offeredSteps } from '@/domain/tickets/stages';
 import { boardLabel } from '../boards/queries';
 import { csvResponse } from '../http/csv';
-import { pageByOffset } from '../http/pages';
+import { everyRow, pageOf, readCursor } from '../http/cursor';
+import { done, type Outcome } from '../refusal';
 import { factsOf } from './commands';
-import { cautionsOf, eventsOf, queue, ticketRecord, type TicketFull } from './queries';
+import {
+  cautionsOf,
+  eventsOf,
+  heldBy,
+  placeOfTicket,
+  queueRows,
+  ticketRecord,
+  type TicketFull,
+} from './queries';
 
 export const boardOf = (t: { boardCode: string | null; boardRevision: string | null }) =>
   t.boardCode !== null && t.boardRevision !== null
@@ -43,10 +52,18 @@ export const writtenView = (m: {
   at: Date;
 }) => ({ id: m.id, side: m.side, author: m.author, body: m.body, at: m.at.toISOString() });
 
-export const ticketPage = (db: Queryable, query: QueueQuery, me: number) =>
-  pageByOffset(query, async (limit, offset) =>
-    (await queue(db, query, me, limit, offset)).rows.map(ticketRow),
-  );
+export async function ticketPage(
+  db: Queryable,
+  query: QueueQuery,
+  me: number,
+): Promise<Outcome<{ json: { items: TicketRow[]; next: string | null } }>> {
+  const { sort, limit } = query;
+  const after = readCursor(sort, query.cursor, heldBy(sort));
+  if (!after.ok) return after;
+  const rows = await queueRows(db, query, me, { limit: limit + 1, after: after.value });
+  const { items, next } = pageOf(rows, limit, sort, (t) => placeOfTicket(sort, t));
+  return done({ json: { items: items.map(ticketRow), next } });
+}
 
 export async function ticketDetail(db: Queryable, ticket: TicketFull, role: Role) {
   const [record, events, cautions, facts] = await Promise.all([
@@ -83,16 +100,6 @@ export async function ticketDetail(db: Queryable, ticket: TicketFull, role: Role
   };
 }
 
-/** Every row of a filter, read in steps so that a long list is never held whole. */
-async function* everyRow(db: Queryable, query: QueueQuery, me: number) {
-  const step = 200;
-  for (let offset = 0; ; offset += step) {
-    const { rows } = await queue(db, query, me, step, offset);
-    yield* rows;
-    if (rows.length < step) return;
-  }
-}
-
 /** The queue as a file. */
 export const queueCsv = (db: Queryable, request: Request, query: QueueQuery, me: number) =>
   csvResponse(
@@ -112,5 +119,8 @@ export const queueCsv = (db: Queryable, request: Request, query: QueueQuery, me:
       { name: 'received', value: (t) => t.receivedAt },
       { name: 'promised', value: (t) => t.promisedOn },
     ],
-    everyRow(db, query, me),
+    everyRow(
+      (limit, after) => queueRows(db, query, me, { limit, after }),
+      (t) => placeOfTicket(query.sort, t),
+    ),
   );
