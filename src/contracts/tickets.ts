@@ -4,7 +4,7 @@ import { STAGES, STEPS } from '@/domain/tickets/stages';
 import { ACCESSORY_CODES, CAUTION_CODES, SYMPTOM_CODES } from '@/domain/tickets/vocabulary';
 import {
   DateOnly,
-  Email,
+  EmailIfAny,
   Id,
   ListQuery,
   Moment,
@@ -12,7 +12,6 @@ import {
   TicketNumber,
   line,
   listOf,
-  orNothing,
   prose,
 } from './common';
 import { defineRoute } from './route';
@@ -26,7 +25,7 @@ export const IntakeCustomer = z
   .object({
     id: Id.optional(),
     name: line(120, 1).optional(),
-    email: orNothing(Email),
+    email: EmailIfAny.optional(),
     phone: line(40).default(''),
     address: line(300).default(''),
   })
@@ -48,6 +47,8 @@ export const Intake = z.object({
   accessoryText: line(300).default(''),
   condition: prose(1000).default(''),
   promisedOn: DateOnly.nullable().default(null),
+  /** Said of an instrument that another customer brought before: it is this one's now. */
+  changedHands: z.boolean().default(false),
 });
 export type Intake = z.output<typeof Intake>;
 
@@ -84,6 +85,13 @@ export const TicketDetail = TicketRow.extend({
   condition: z.string(),
   estimate: z.object({ total: Money, work: z.string() }).nullable(),
   exception: z.string().nullable(),
+  /** How the customer is reached; `version` goes with a correction of it. */
+  contact: z.object({
+    email: z.string().nullable(),
+    phone: z.string().nullable(),
+    address: z.string().nullable(),
+    version: z.int(),
+  }),
   cautions: z.array(z.object({ caution: z.enum(CAUTION_CODES), at: Moment, by: z.string() })),
   steps: z.array(
     z.object({
@@ -93,6 +101,8 @@ export const TicketDetail = TicketRow.extend({
       note: z.string().nullable(),
       estimate: z.boolean(),
       blocked: z.string().nullable(),
+      /** Why the step is an exception, which its note then signs; the customer reads that note. */
+      exception: z.string().nullable(),
     }),
   ),
   events: z.array(TicketEvent),
@@ -205,7 +215,7 @@ export const ticketRoutes = {
   writeMessage: defineRoute({
     method: 'POST',
     path: '/api/tickets/{number}/messages',
-    summary: 'Write to the customer; they are told by e-mail.',
+    summary: 'Write to the customer; they are told by e-mail where an address is known.',
     who: 'ticket.message',
     params: ByNumber,
     body: z.object({ body: prose(4000, 1) }),

@@ -33,6 +33,17 @@ export async function customerById(db: Queryable, id: number) {
   return row ?? null;
 }
 
+/** How a customer is reached, with the version that a correction is made from. */
+export async function contactOf(db: Queryable, id: number) {
+  const { email, phone, address, version } = customers;
+  const [row] = await db
+    .select({ email, phone, address, version })
+    .from(customers)
+    .where(eq(customers.id, id));
+  if (!row) throw new Error(`Customer ${id} is gone.`);
+  return row;
+}
+
 export async function customersByEmail(db: Queryable, email: string) {
   return db.select(columns).from(customers).where(eq(customers.email, email)).limit(5);
 }

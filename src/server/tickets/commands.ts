@@ -3,18 +3,18 @@ import { and, count, eq } from 'drizzle-orm';
 import { inTransaction, type Database, type Queryable } from '@/db/client';
 import { users } from '@/db/schema/people';
 import { customers } from '@/db/schema/shop';
-import { readings, ticketCautions, ticketEvents, tickets } from '@/db/schema/tickets';
-import { MOST_MINOR } from '@/domain/money';
+import { ticketCautions, ticketEvents, tickets } from '@/db/schema/tickets';
+import { MOST_MINOR, writeMoney } from '@/domain/money';
 import { roleMay } from '@/domain/people';
 import { decideStep, isClosed, type Stage, type Step } from '@/domain/tickets/stages';
-import { CAUTION_CODES, type Caution } from '@/domain/tickets/vocabulary';
+import type { Caution } from '@/domain/tickets/vocabulary';
 import type { CustomerActor, Granted } from '../auth/actor';
 import { endClaimSessions } from '../auth/end-access';
 import { hashClaimCode, newClaimCode } from '../auth/secrets';
 import { promise } from '../outbox/commands';
 import { absent, done, refuse, refuseField, type Outcome } from '../refusal';
 import { receiptMail, stepMail } from '../mail/letters';
-import { isOwn } from './policy';
+import { factsOf, isOwn } from './policy';
 import type { TicketFull } from './queries';
 import type { Shop, TicketHead } from './types';
 
@@ -35,23 +35,8 @@ export async function leaveEvent(
     .values({ ticketId, at: now, actorId: actor.id, actorName: actor.name, ...event });
 }
 
-/** What the state machine wants to know. */
-export async function factsOf(db: Queryable, ticket: TicketHead) {
-  const [ticked] = await db
-    .select({ n: count() })
-    .from(ticketCautions)
-    .where(eq(ticketCautions.ticketId, ticket.id));
-  const [after] = await db
-    .select({ n: count() })
-    .from(readings)
-    .where(and(eq(readings.ticketId, ticket.id), eq(readings.phase, 'after-repair')));
-  return {
-    stage: ticket.stage,
-    stageBefore: ticket.stageBefore,
-    cautionsTicked: (ticked?.n ?? 0) >= CAUTION_CODES.length,
-    readingsAfterRepair: after?.n ?? 0,
-  };
-}
+/** What fits on the papers of an instrument that left with an exception. */
+const EXCEPTION_LENGTH = 1000;
 
 export type StepRequest = {
   step: Step;
@@ -83,7 +68,7 @@ export async function takeStep(
     if (currency !== shop.currency || amount <= 0 || amount > MOST_MINOR)
       return refuseField(
         'estimate.total',
-        `${amount} ${currency} minor units were given: a total above zero, up to ${MOST_MINOR}, in ${shop.currency} is needed.`,
+        `The total given is ${writeMoney(amount)} ${currency}: more than ${writeMoney(0)} and at most ${writeMoney(MOST_MINOR)} ${shop.currency} is needed.`,
       );
     const decided = decideStep(await factsOf(tx, row), actor.role, input.step, {
       note: input.note,
@@ -101,6 +86,8 @@ export async function takeStep(
           more: { yours: version, current: row.version, stage: row.stage },
         },
       );
+    if (decided.exception && input.note.length > EXCEPTION_LENGTH)
+      return refuseField('note', `Longer than ${EXCEPTION_LENGTH} characters: shorten it.`);
     const bench =
       input.step === 'begin' && row.assignedTo === null && roleMay(actor.role, 'ticket.bench');
     const [changed] = await tx
@@ -112,6 +99,7 @@ export async function takeStep(
         version: version + 1,
         ...(isClosed(decided.to) ? { closedAt: now } : {}),
         ...(bench ? { assignedTo: actor.id } : {}),
+        ...(decided.exception ? { exceptionReason: input.note, exceptionBy: actor.id } : {}),
         ...(input.step === 'send-estimate' && estimate
           ? {
               estimateMinor: estimate.total.amount,

@@ -4,10 +4,11 @@ import { offeredSteps } from '@/domain/tickets/stages';
 import { judged } from '../bench/judged';
 import { sheetOf } from '../bench/queries';
 import { boardNetwork, labelsOf } from '../boards/queries';
+import { contactOf } from '../customers/queries';
 import { proposeNotes } from '../faults/queries';
 import { photosOfTicket } from '../photos/queries';
 import type { Runtime } from '../runtime';
-import { factsOf } from './commands';
+import { factsOf } from './policy';
 import {
   benchPeople,
   cautionsOf,
@@ -67,9 +68,10 @@ export async function wholeTicket(app: Runtime, number: string, role: Role) {
   const { db } = app;
   const ticket = await ticketByNumber(db, number);
   if (!ticket) return null;
-  const [record, events, cautions, messages, notes, people, facts, photos, bench] =
+  const [record, contact, events, cautions, messages, notes, people, facts, photos, bench] =
     await Promise.all([
       ticketRecord(db, ticket.id),
+      contactOf(db, ticket.customerId),
       eventsOf(db, ticket.id),
       cautionsOf(db, ticket.id),
       messagesOf(db, ticket.id),
@@ -83,6 +85,7 @@ export async function wholeTicket(app: Runtime, number: string, role: Role) {
     ticket,
     board: boardOf(ticket),
     record,
+    contact,
     events,
     cautions,
     messages,

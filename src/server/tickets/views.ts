@@ -4,10 +4,11 @@ import type { QueueQuery, TicketRow } from '@/contracts/tickets';
 import type { Role } from '@/domain/people';
 import { offeredSteps } from '@/domain/tickets/stages';
 import { boardLabel } from '../boards/queries';
+import { contactOf } from '../customers/queries';
 import { csvResponse } from '../http/csv';
 import { everyRow, pageOf, readCursor } from '../http/cursor';
 import { done, type Outcome } from '../refusal';
-import { factsOf } from './commands';
+import { factsOf } from './policy';
 import {
   cautionsOf,
   eventsOf,
@@ -66,8 +67,9 @@ export async function ticketPage(
 }
 
 export async function ticketDetail(db: Queryable, ticket: TicketFull, role: Role) {
-  const [record, events, cautions, facts] = await Promise.all([
+  const [record, contact, events, cautions, facts] = await Promise.all([
     ticketRecord(db, ticket.id),
+    contactOf(db, ticket.customerId),
     eventsOf(db, ticket.id),
     cautionsOf(db, ticket.id),
     factsOf(db, ticket),
@@ -87,6 +89,7 @@ export async function ticketDetail(db: Queryable, ticket: TicketFull, role: Role
           }
         : null,
     exception: record.exceptionReason,
+    contact,
     cautions: cautionList(cautions),
     steps: offeredSteps(facts, role),
     events: events.map((e) => ({
