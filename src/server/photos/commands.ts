@@ -19,6 +19,7 @@ import { leaveEvent } from '../tickets/commands';
 import { finishPhoto } from './finish';
 import { removeUnclaimed, UPLOADS } from './objects';
 import { countPhotos, noteThatShows, photoByPublicId, photoView, ticketOfPhotos } from './queries';
+import { refuseClosed } from './policy';
 import type { PhotoRow, PhotoShop } from './types';
 
 type Bench = Granted<'ticket.bench'>;
@@ -37,6 +38,8 @@ export async function beginPhoto(
 ): Promise<Outcome<Upload>> {
   const ticket = await ticketOfPhotos(shop.db, number);
   if (!ticket) return absent('ticket');
+  const closed = await refuseClosed(shop.db, { ticketId: ticket.id });
+  if (closed) return closed;
   const size = refuseSize(input.bytes);
   if (size) {
     const refused = input.bytes > PHOTO_MAX_BYTES ? 'too-large' : 'invalid';
@@ -87,6 +90,8 @@ export async function completePhoto(
 ): Promise<Outcome<PhotoView>> {
   const row = await photoByPublicId(shop.db, publicId);
   if (!row) return absent('photo');
+  const closed = row.state === 'waiting' ? await refuseClosed(shop.db, row) : null;
+  if (closed) return closed;
   try {
     if (row.state === 'waiting' && row.uploadKey) {
       const arrived = await fromStore(shop.store.head(row.uploadKey));
@@ -129,12 +134,14 @@ export async function editPhoto(
 ): Promise<Outcome<PhotoView>> {
   const row = await photoByPublicId(shop.db, id);
   if (row?.state !== 'ready') return absent('photo');
-  const changed = await inTransaction(shop.db, async (tx) => {
+  const refusal = await inTransaction(shop.db, async (tx) => {
+    const closed = await refuseClosed(tx, row);
+    if (closed) return closed;
     const [result] = await tx
       .update(photos)
       .set({ ...change, version: sql`${photos.version} + 1` })
       .where(and(eq(photos.id, row.id), eq(photos.version, version), eq(photos.state, 'ready')));
-    if (result.affectedRows !== 1) return false;
+    if (result.affectedRows !== 1) return stale(shop, row, version);
     const { shared } = change;
     // The version stood still, so what was read of `shared` is what the row had.
     if (row.ticketId !== null && shared !== undefined && shared !== row.shared) {
@@ -142,9 +149,9 @@ export async function editPhoto(
       const note = shared ? 'Photo shared with the customer' : 'Photo no longer shared';
       await leaveEvent(tx, row.ticketId, actor, { kind: 'photo', step, note, open: shared }, now);
     }
-    return true;
+    return null;
   });
-  if (!changed) return stale(shop, row, version);
+  if (refusal) return refusal;
   const view = await photoView(shop.db, row.id);
   return view ? done(view) : absent('photo');
 }
@@ -160,6 +167,8 @@ export async function removePhoto(
   if (!row) return absent('photo');
   const mine = and(eq(photos.id, row.id), eq(photos.version, version));
   const refusal = await inTransaction(shop.db, async (tx) => {
+    const closed = await refuseClosed(tx, row);
+    if (closed) return closed;
     // The lock makes a note that is just being saved with this photo wait, or be seen here.
     const [held] = await tx.select({ id: photos.id }).from(photos).where(mine).for('update');
     if (!held) return row.state === 'ready' ? stale(shop, row, version) : absent('photo');

@@ -6,15 +6,18 @@ import { pins } from '@/db/schema/photos';
 import type { Granted } from '../auth/actor';
 import { absent, done, refuse, refuseField, type Outcome } from '../refusal';
 import { boardOfPhoto, partOfBoard, photoByPublicId, pinById } from './queries';
+import { refuseClosed } from './policy';
 import type { PhotoRow } from './types';
 
 type Bench = Granted<'ticket.bench'>;
 
 const MOST_PINS = 200;
 
-async function readyPhoto(db: Queryable, publicId: string): Promise<PhotoRow | null> {
+/** The photo, ready and of a ticket that is not closed. */
+async function openPhoto(db: Queryable, publicId: string): Promise<Outcome<PhotoRow>> {
   const row = await photoByPublicId(db, publicId);
-  return row?.state === 'ready' ? row : null;
+  if (row?.state !== 'ready') return absent('photo');
+  return (await refuseClosed(db, row)) ?? done(row);
 }
 
 /** What the pin stands for: a part of the photo's board under its reference, or a label alone. */
@@ -37,8 +40,9 @@ export async function addPin(
   { photo: publicId, ...input }: NewPin & { photo: string },
   now: Date,
 ): Promise<Outcome<PinView>> {
-  const photo = await readyPhoto(db, publicId);
-  if (!photo) return absent('photo');
+  const open = await openPhoto(db, publicId);
+  if (!open.ok) return open;
+  const photo = open.value;
   const what = await standsFor(db, photo, input);
   if (!what.ok) return what;
   const [held] = await db.select({ n: count() }).from(pins).where(eq(pins.photoId, photo.id));
@@ -74,8 +78,9 @@ export async function editPin(
   input: EditPin & PinPlace,
   _now: Date,
 ): Promise<Outcome<PinView>> {
-  const photo = await readyPhoto(db, input.photo);
-  if (!photo) return absent('photo');
+  const open = await openPhoto(db, input.photo);
+  if (!open.ok) return open;
+  const photo = open.value;
   const what = await standsFor(db, photo, input);
   if (!what.ok) return what;
   const [result] = await db
@@ -96,8 +101,9 @@ export async function removePin(
   input: PinPlace,
   _now: Date,
 ): Promise<Outcome<null>> {
-  const photo = await readyPhoto(db, input.photo);
-  if (!photo) return absent('photo');
+  const open = await openPhoto(db, input.photo);
+  if (!open.ok) return open;
+  const photo = open.value;
   const [result] = await db
     .delete(pins)
     .where(

@@ -1,3 +1,7 @@
+import { eq } from 'drizzle-orm';
+import type { Queryable } from '@/db/client';
+import { tickets } from '@/db/schema/tickets';
+import { isClosed } from '@/domain/tickets/stages';
 import { grant, type Actor } from '../auth/actor';
 import { absent, refuse, type Refusal } from '../refusal';
 import type { PhotoGuard } from './types';
@@ -18,4 +22,23 @@ export function refuseView(actor: Actor | null, photo: PhotoGuard | null): Refus
     photo.customerId === actor.customerId &&
     (actor.ticketId === null || actor.ticketId === photo.ticketId);
   return theirs ? null : absent('photo');
+}
+
+/**
+ * Photos of a closed ticket stay as they are: they tell how the instrument left. Null where they may be changed, as
+ * those of a board file always may. In a transaction the ticket is not closed before that ends.
+ */
+export async function refuseClosed(
+  db: Queryable,
+  { ticketId }: { ticketId: number | null },
+): Promise<Refusal | null> {
+  if (ticketId === null) return null;
+  const [ticket] = await db
+    .select({ stage: tickets.stage })
+    .from(tickets)
+    .where(eq(tickets.id, ticketId))
+    .for('share');
+  return ticket && isClosed(ticket.stage)
+    ? refuse('conflict', 'The ticket is closed: its photos stay as they are.')
+    : null;
 }
