@@ -27,7 +27,10 @@ export type NewReading = z.output<typeof NewReading>;
 export const EditReading = z.object(where);
 export type EditReading = z.output<typeof EditReading>;
 
-export const Ohms = z.union([z.number(), z.literal('OL')]);
+export const Ohms = z.union(
+  [z.number(), z.literal('OL')],
+  'Not a resistance: ohms as a number, or OL, are needed.',
+);
 
 export const BenchReading = z.object({
   id: z.int(),

@@ -1,5 +1,6 @@
 /** Shapes that many endpoints share. */
 import * as z from 'zod/v4';
+import './wrong-words';
 
 export const Problem = z.object({
   type: z.string(),
@@ -10,6 +11,9 @@ export const Problem = z.object({
 });
 export type Problem = z.infer<typeof Problem>;
 
+/** JSON Schema’s patterns are read without Unicode classes by many: this is judged beside them. */
+export const wholePairs = (text: string): boolean => !/\p{Cs}/u.test(text);
+
 /** One line of text: no control characters, no half of a surrogate pair, trimmed. */
 export const line = (max: number, min = 0) =>
   z
@@ -18,9 +22,10 @@ export const line = (max: number, min = 0) =>
     .min(min, min === 1 ? 'Nothing was given: this is needed.' : undefined)
     .max(max, `Longer than ${max} characters: shorten it.`)
     .regex(
-      /^[^\u0000-\u001f\u007f\p{Cs}]*$/u,
+      /^[^\u0000-\u001f\u007f]*$/,
       'Has a control character: one line of plain text is needed.',
-    );
+    )
+    .refine(wholePairs, 'Has half of a character: whole ones are needed.');
 
 /** Several lines of text. */
 export const prose = (max: number, min = 0) =>
@@ -33,9 +38,10 @@ export const prose = (max: number, min = 0) =>
         .min(min, min === 1 ? 'Nothing was given: this is needed.' : undefined)
         .max(max, `Longer than ${max} characters: shorten it.`)
         .regex(
-          /^[^\u0000-\u0008\u000b-\u001f\u007f\p{Cs}]*$/u,
+          /^[^\u0000-\u0008\u000b-\u001f\u007f]*$/,
           'Has a control character: plain text is needed.',
-        ),
+        )
+        .refine(wholePairs, 'Has half of a character: whole ones are needed.'),
     );
 
 export const Email = z
@@ -48,6 +54,15 @@ export const Email = z
 /** What may be left empty: a form sends the empty text for nothing. A union would not say what is wrong with the rest. */
 export const orNothing = <T extends z.ZodType>(one: T) =>
   z.preprocess((given) => (given === '' ? undefined : given), one.optional()).optional();
+
+/** An e-mail address, or nothing where nothing was typed. */
+export const EmailIfAny = z
+  .string()
+  .trim()
+  .toLowerCase()
+  .max(190, 'Longer than 190 characters: shorten it.')
+  .transform((typed) => typed || undefined)
+  .pipe(z.email('Not an e-mail address: something like name@example.org is needed.').optional());
 
 /** Internal keys as they stand in addresses. */
 export const Id = z.coerce.number().int().positive().max(Number.MAX_SAFE_INTEGER);

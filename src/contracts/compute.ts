@@ -24,7 +24,10 @@ export const Network = z.object({
   parts: z.array(NetworkPart),
 });
 
-const OhmsOrOver = z.union([z.number().min(0).max(1e15), z.literal('OL')]);
+const OhmsOrOver = z.union(
+  [z.number().min(0).max(1e15), z.literal('OL')],
+  'Not a resistance: 0 to 1e15 Ω as a number, or OL, are needed.',
+);
 const Accuracy = z.object({
   percent: z.number().min(0).max(100),
   counts: z.number().min(0).max(10_000),

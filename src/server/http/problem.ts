@@ -1,3 +1,4 @@
+import { NOTHING_GIVEN, NO_FORM_FITS } from '@/contracts/wrong-words';
 import { REFUSALS, type FieldError, type Refusal } from '../refusal';
 
 /** The one place where a refusal becomes an answer (RFC 9457). */
@@ -32,15 +33,40 @@ export function crashResponse(requestId: string): Response {
   });
 }
 
+type Issue = {
+  path: PropertyKey[];
+  message: string;
+  code?: string;
+  /** Of a union: why each of its forms did not fit. */
+  errors?: Issue[][];
+};
+
+const lacking = (form: Issue[]) =>
+  form.some(({ code, message }) => code === 'invalid_type' && message === NOTHING_GIVEN);
+
+/**
+ * Where one of several forms was to be given, what is wrong is told of the form that was meant: the one of which
+ * nothing is missing.
+ */
+function ofMeantForm(issue: Issue): Issue[] {
+  const { errors: forms = [], message, path } = issue;
+  if (forms.length === 0 || message !== NO_FORM_FITS) return [issue];
+  const whole = forms.filter((form) => !lacking(form));
+  const plain = forms.every((form) => form.every((one) => one.path.length === 0));
+  const meant = whole.length === 1 ? whole[0] : plain ? forms[0] : forms.at(-1);
+  return (meant ?? []).flatMap((one) => ofMeantForm({ ...one, path: [...path, ...one.path] }));
+}
+
 /** zod's issues as fields with paths like `parts[3].nets[0]`, `most` of them. */
-export function fieldErrors(
-  issues: readonly { path: PropertyKey[]; message: string }[],
-  most = 50,
-): FieldError[] {
-  return issues.slice(0, most).map((issue) => ({
-    path: issue.path
-      .map((p, i) => (typeof p === 'number' ? `[${p}]` : i === 0 ? String(p) : `.${String(p)}`))
-      .join(''),
-    message: issue.message,
-  }));
+export function fieldErrors(issues: readonly Issue[], most = 50): FieldError[] {
+  return issues
+    .slice(0, most)
+    .flatMap(ofMeantForm)
+    .slice(0, most)
+    .map((issue) => ({
+      path: issue.path
+        .map((p, i) => (typeof p === 'number' ? `[${p}]` : i === 0 ? String(p) : `.${String(p)}`))
+        .join(''),
+      message: issue.message,
+    }));
 }
