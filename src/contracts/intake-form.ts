@@ -2,14 +2,14 @@
 import * as z from 'zod/v4';
 import { INCIDENTS } from '@/domain/parts/kinds';
 import { ACCESSORY_CODES, SYMPTOM_CODES } from '@/domain/tickets/vocabulary';
-import { DateOnly, Email, Id, line, orNothing, prose } from './common';
+import { DateOnly, EmailIfAny, Id, line, orNothing, prose } from './common';
 import type { Intake } from './tickets';
 
 export const IntakeForm = z
   .object({
     customerId: orNothing(Id),
     name: line(120).default(''),
-    email: orNothing(Email),
+    email: EmailIfAny.optional(),
     phone: line(40).default(''),
     address: line(300).default(''),
     maker: line(80, 1),
@@ -22,18 +22,24 @@ export const IntakeForm = z
     accessoryText: line(300).default(''),
     condition: prose(1000).default(''),
     promisedOn: orNothing(DateOnly),
+    changedHands: z.literal('yes').optional(),
+    /** Made with the form: sent twice, it makes one ticket. */
+    once: z.uuid('This form is not one of ours: open the page anew.').optional(),
   })
   .refine((f) => f.customerId !== undefined || f.name !== '', {
     path: ['name'],
     message: 'No customer was given: find one or write the name of a new one.',
   })
-  .transform((f): Intake => {
-    const { customerId, name, email, phone, address, maker, model, serial, promisedOn, ...said } =
-      f;
+  .transform(({ once, ...f }): { intake: Intake; once: string | null } => {
+    const { customerId, name, email, phone, address, maker, model, serial, ...said } = f;
     return {
-      ...said,
-      customer: customerId === undefined ? { name, email, phone, address } : { id: customerId },
-      instrument: { maker, model, serial },
-      promisedOn: promisedOn ?? null,
+      once: once ?? null,
+      intake: {
+        ...said,
+        customer: customerId === undefined ? { name, email, phone, address } : { id: customerId },
+        instrument: { maker, model, serial },
+        promisedOn: f.promisedOn ?? null,
+        changedHands: f.changedHands === 'yes',
+      },
     };
   });

@@ -5,46 +5,47 @@ import { users } from '@/db/schema/people';
 import { done, refuseField, type Outcome } from '../refusal';
 import { customerById, customersByEmail } from './queries';
 
-export type CustomerInput =
-  { id: number } | { name: string; email?: string | undefined; phone: string; address: string };
+export type NewCustomer = {
+  name: string;
+  email?: string | null | undefined;
+  phone: string;
+  address: string;
+};
+export type CustomerInput = { id: number } | NewCustomer;
 
 export type IntakeCustomer = { id: number; name: string; email: string | null };
 
-/**
- * The customer of an intake: the one chosen, else the one who already has this e-mail and name, else a new one
- * with the account that the claim code and the one-time link sign in to.
- */
-export async function customerForIntake(
+/** The customer of an intake whom the shop knows: the one chosen, else the one of this e-mail and name; null if new. */
+export async function knownCustomer(
   tx: Queryable,
   input: CustomerInput,
-  now: Date,
-): Promise<Outcome<IntakeCustomer>> {
+): Promise<Outcome<IntakeCustomer | null>> {
   if ('id' in input) {
     const found = await customerById(tx, input.id);
     return found
       ? done(found)
       : refuseField('customer.id', 'There is no such customer: find one, or write a new one.');
   }
-  const email = input.email ?? null;
-  if (email !== null) {
-    const same = (await customersByEmail(tx, email)).find(
-      (c) => c.name.toLowerCase() === input.name.toLowerCase(),
-    );
-    if (same) return done(same);
-  }
+  if (!input.email) return done(null);
+  const same = (await customersByEmail(tx, input.email)).find(
+    (c) => c.name.toLowerCase() === input.name.toLowerCase(),
+  );
+  return done(same ?? null);
+}
+
+/** Writes a new customer, with the account that the claim code and the one-time link sign in to. */
+export async function writeCustomer(
+  tx: Queryable,
+  { name, email = null, phone, address }: NewCustomer,
+  now: Date,
+): Promise<IntakeCustomer> {
   const [made] = await tx
     .insert(customers)
-    .values({
-      name: input.name,
-      email,
-      phone: input.phone || null,
-      address: input.address || null,
-      createdAt: now,
-    })
+    .values({ name, email, phone: phone || null, address: address || null, createdAt: now })
     .$returningId();
   if (!made) throw new Error('The customer was not written.');
-  await openAccount(tx, made.id, input.name, now);
-  return done({ id: made.id, name: input.name, email });
+  await openAccount(tx, made.id, name, now);
+  return { id: made.id, name, email };
 }
 
 /** The sign-in account of a customer: no password, and a handle instead of an e-mail. */

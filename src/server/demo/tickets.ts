@@ -81,6 +81,7 @@ async function writeTicket(
       accessoryText: '',
       condition: chance.next() < 0.4 ? 'Scratched window, jacks clean.' : '',
       promisedOn: promised.toISOString().slice(0, 10),
+      changedHands: false,
     },
     shop,
     atWork(received.getTime(), now),

@@ -1,17 +1,24 @@
 /** Taking in an instrument at the counter. */
-import { and, eq, sql } from 'drizzle-orm';
+import { eq, sql } from 'drizzle-orm';
 import type { Intake } from '@/contracts/tickets';
 import { inTransaction, isDuplicate, type Database, type Queryable } from '@/db/client';
-import { instruments, models } from '@/db/schema/shop';
 import { ticketNumbers, tickets } from '@/db/schema/tickets';
 import { monthOf, numberOf } from '@/domain/tickets/numbers';
 import { dayOf } from '@/domain/time/shop-day';
 import type { Granted } from '../auth/actor';
 import { hashClaimCode, newClaimCode } from '../auth/secrets';
-import { customerForIntake } from '../customers/commands';
+import { knownCustomer, writeCustomer, type NewCustomer } from '../customers/commands';
+import {
+  keepInstrument,
+  knownInstrument,
+  modelFor,
+  refuseInstrument,
+  TakenMeanwhile,
+  writeInstrument,
+} from '../instruments/commands';
 import { receiptMail } from '../mail/letters';
 import { promise } from '../outbox/commands';
-import { done, refuseField, type Outcome } from '../refusal';
+import { done, refuse, refuseField, type Outcome } from '../refusal';
 import { leaveEvent } from '../tickets/commands';
 import type { Shop } from '../tickets/types';
 
@@ -27,47 +34,11 @@ async function nextNumber(tx: Queryable, now: Date, timeZone: string): Promise<s
   return numberOf(month, row.last);
 }
 
-/** The model by its label, made when the shop meets it for the first time (its board is then not known yet). */
-async function modelFor(tx: Queryable, maker: string, name: string, now: Date) {
-  const byLabel = and(eq(models.maker, maker), eq(models.name, name));
-  const [known] = await tx.select().from(models).where(byLabel);
-  if (known) return { id: known.id, boardId: known.boardId };
-  const [made] = await tx.insert(models).values({ maker, name, createdAt: now }).$returningId();
-  if (!made) throw new Error('The model was not written.');
-  return { id: made.id, boardId: null };
-}
-
-async function instrumentFor(
-  tx: Queryable,
-  modelId: number,
-  serial: string,
-  customerId: number,
-  now: Date,
-) {
-  const bySerial = and(eq(instruments.modelId, modelId), eq(instruments.serial, serial));
-  // Read without a lock: locking a row that is not there yet closes the gap to every other intake.
-  const [known] = await tx.select().from(instruments).where(bySerial);
-  if (known) {
-    if (known.customerId !== customerId)
-      await tx
-        .update(instruments)
-        .set({ customerId, version: sql`version + 1` })
-        .where(eq(instruments.id, known.id));
-    return known.id;
-  }
-  const [made] = await tx
-    .insert(instruments)
-    .values({ modelId, serial, customerId, createdAt: now })
-    .$returningId();
-  if (!made) throw new Error('The instrument was not written.');
-  return made.id;
-}
-
 /** Nobody promises further ahead than this, ms. */
 const FURTHEST_PROMISE = 366 * 24 * 3_600_000;
 
 /** A promise lies between today and a year from now, by the shop's calendar. */
-function keepable(promisedOn: string, timeZone: string, now: Date): boolean {
+export function keepable(promisedOn: string, timeZone: string, now: Date): boolean {
   const last = new Date(now.getTime() + FURTHEST_PROMISE);
   return promisedOn >= dayOf(now, timeZone) && promisedOn <= dayOf(last, timeZone);
 }
@@ -84,28 +55,35 @@ export async function takeIn(
     return refuseField('symptoms', 'No symptom was given: tick one or describe it.');
   if (input.promisedOn !== null && !keepable(input.promisedOn, shop.timeZone, now))
     return refuseField('promisedOn', 'Promise a day between today and a year from now.');
+  const { customer: _c, instrument: label, changedHands, ...said } = input;
   const claimCode = newClaimCode();
   const attempt = () =>
     inTransaction(db, async (tx): Promise<Outcome<{ number: string; claimCode: string }>> => {
-      const customer = await customerForIntake(tx, input.customer, now);
-      if (!customer.ok) return customer;
-      const model = await modelFor(tx, input.instrument.maker, input.instrument.model, now);
-      const instrumentId = await instrumentFor(
-        tx,
-        model.id,
-        input.instrument.serial,
-        customer.value.id,
-        now,
-      );
+      const chosen = await knownCustomer(tx, input.customer);
+      if (!chosen.ok) return chosen;
+      const known = await knownInstrument(tx, label);
+      const refusal =
+        known && refuseInstrument(known, label, chosen.value?.id ?? null, changedHands);
+      if (refusal) return refusal;
+      // What was given can be taken in: only now is anything written.
+      const customer =
+        chosen.value ?? (await writeCustomer(tx, input.customer as NewCustomer, now));
+      const model = await modelFor(tx, label.maker, label.model, now);
+      const row = { modelId: model.id, serial: label.serial, customerId: customer.id };
+      if (known) await keepInstrument(tx, known, customer.id);
+      const instrumentId = known?.id ?? (await writeInstrument(tx, row, now));
+      const note =
+        known && known.customerId !== customer.id
+          ? `Changed hands: brought by ${customer.name}, before by ${known.customer}.`
+          : '';
       const number = await nextNumber(tx, now, shop.timeZone);
-      const { customer: _c, instrument: _i, ...said } = input;
       const [made] = await tx
         .insert(tickets)
         .values({
           ...said,
           number,
           instrumentId,
-          customerId: customer.value.id,
+          customerId: customer.id,
           boardId: model.boardId,
           stage: 'received',
           claimHash: hashClaimCode(shop.secret, number, claimCode),
@@ -115,15 +93,16 @@ export async function takeIn(
         })
         .$returningId();
       if (!made) throw new Error('The ticket was not written.');
-      await leaveEvent(tx, made.id, actor, { kind: 'step', toStage: 'received', open: true }, now);
-      if (customer.value.email)
+      const event = { kind: 'step', toStage: 'received', note, open: true } as const;
+      await leaveEvent(tx, made.id, actor, event, now);
+      if (customer.email)
         await promise(
           tx,
           shop.secret,
           `receipt:${number}:1`,
           {
             kind: 'mail',
-            mail: receiptMail(shop, customer.value, number, claimCode, input.instrument),
+            mail: receiptMail(shop, customer, number, claimCode, label),
           },
           now,
         );
@@ -134,7 +113,13 @@ export async function takeIn(
       return await attempt();
     } catch (error) {
       // Two counters took in the same new model, then the same serial, at once: the second finds the first one's row.
-      if (!isDuplicate(error) || tries === 3) throw error;
+      const taken = error instanceof TakenMeanwhile;
+      if (taken && tries === 3)
+        return refuse(
+          'conflict',
+          'The instrument is being taken in by somebody else: see the queue.',
+        );
+      if ((!taken && !isDuplicate(error)) || tries === 3) throw error;
     }
   }
 }
