@@ -3,6 +3,7 @@ import type { Route } from './route';
 import { auditRoutes } from './audit';
 import { benchRoutes } from './bench';
 import { computeRoutes } from './compute';
+import { correctionRoutes } from './corrections';
 import { deskRoutes } from './desk';
 import { faultRoutes } from './faults';
 import { searchRoutes } from './search';
@@ -18,6 +19,7 @@ export const ROUTES: Route[] = [
   serviceRoutes,
   sessionRoutes,
   ticketRoutes,
+  correctionRoutes,
   benchRoutes,
   photoRoutes,
   deskRoutes,

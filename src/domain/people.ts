@@ -18,6 +18,8 @@ const owner = ['owner'] as const;
 export const PERMISSIONS = {
   'ticket.read': { roles: everyone, scope: 'read' },
   'ticket.intake': { roles: everyone, scope: 'desk' },
+  /** Correcting what was written down of a ticket that is closed. */
+  'ticket.amend': { roles: seniors, scope: 'desk' },
   'ticket.step': { roles: everyone, scope: 'desk' },
   'ticket.message': { roles: everyone, scope: 'desk' },
   'ticket.bench': { roles: bench, scope: 'bench' },

@@ -93,6 +93,7 @@ export const ticketEvents = mysqlTable(
       'assigned',
       'claim',
       'fault',
+      'corrected',
     ]).notNull(),
     step: varchar({ length: 40 }),
     fromStage: mysqlEnum(STAGES),

@@ -34,6 +34,7 @@ export const PAGES: Record<string, PageRule> = {
   '/queue': { get: 'ticket.read' },
   '/intake': { get: 'ticket.intake', post: 'ticket.intake' },
   '/tickets/[number]': { get: 'ticket.read', post: 'ticket.read' },
+  '/tickets/[number]/edit': { get: 'ticket.intake', post: 'ticket.intake' },
   '/tickets/[number]/tag': { get: 'ticket.intake' },
   '/tickets/[number]/receipt': { get: 'ticket.intake', post: 'ticket.intake' },
   '/instruments/[id]': { get: 'ticket.read' },

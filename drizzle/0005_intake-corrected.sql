@@ -1,0 +1,1 @@
+ALTER TABLE `ticket_events` MODIFY COLUMN `kind` enum('step','caution','photo','message','assigned','claim','fault','corrected') NOT NULL;
