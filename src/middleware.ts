@@ -100,11 +100,7 @@ const person = defineMiddleware(async (context, next) => {
   );
   context.locals.actor = read.actor;
   context.locals.sessionCookie = read.cookie;
-  if (
-    !read.byToken &&
-    crossSite(context.request, app.settings.origin) &&
-    context.url.pathname !== '/api/payments/webhook'
-  )
+  if (!read.byToken && crossSite(context.request, app.settings.origin))
     return problemResponse(
       refuse(
         'not-allowed',
