@@ -81,7 +81,6 @@ describe('questions', () => {
     ['thermistor open', 'lb-40-ptc-open'],
     ['VDR leaking', 'lb-40-mov-leaky'],
     ['metal oxide varistor leakage', 'lb-40-mov-leaky'],
-    ['polyfuse', null],
     ['resettable fuse open', 'lb-40-ptc-open'],
     ['power supply stuck transistor shorted', 'ps-3-pass'],
     ['megohmmeter capacitor', 'it-5-capacitor'],
@@ -105,6 +104,46 @@ describe('questions', () => {
     ['Corvane C700 coil', 'cx-7-coil'],
   ])('%j finds %s first', (question, key) => {
     expect(find(question)[0] ?? null).toBe(key);
+  });
+
+  // What the bench says for the same thing; common usage of the trade.
+  test.each([
+    [['fuse blown', 'blown fuse', 'fuse open', 'fuse open circuit'], 'lb-40-fuse-ma'],
+    [['PTC open', 'thermistor', 'polyfuse', 'resettable fuse'], 'lb-40-ptc-open'],
+    [['MOV leaky', 'varistor leak', 'VDR leakage', 'surge absorber leaks'], 'lb-40-mov-leaky'],
+    [['GDT', 'gas tube', 'gas discharge tube', 'arrester'], 'it-5-flameproof'],
+    [['TVS', 'transient suppressor', 'zener', 'zener leakage'], 'lb-40-clamp-leaky'],
+    [['shunt', 'sense resistor', 'current shunt burnt'], 'lb-40-shunt-ma'],
+    [['drifted', 'R1 drift'], 'lb-40-chain-high'],
+    [
+      ['pass transistor shorted', 'pass transistor dead short', 'output transistor short'],
+      'ps-3-pass',
+    ],
+  ])('%j all find %s first', (questions, key) => {
+    for (const question of questions) expect(find(question)[0], question).toBe(key);
+  });
+
+  test('a phrase that only says a word at length asks for that word, not for its other words', () => {
+    for (const [phrase, word] of [
+      ['open circuit', 'open'],
+      ['short circuit', 'short'],
+      ['dead short', 'short'],
+    ] as const) {
+      expect(find(phrase), phrase).toEqual(find(word));
+      expect(find(`RV1 ${phrase}`)).toEqual(find(`RV1 ${word}`));
+    }
+    // "high-impedance circuit" stands in this one, and nothing in it that is open circuit ranks it.
+    const found = find('open circuit');
+    expect(found[0]).toBe('lb-40-ptc-and-mov');
+    expect(found.slice(0, 5)).not.toContain('lb-40-mov-leaky');
+    expect(found.slice(0, 5)).not.toContain('it-5-flameproof');
+  });
+
+  test('a word of the trade is no slip for another', () => {
+    const titles = (text: string) => JSON.stringify(questionOf(text));
+    for (const word of ['open', 'leak', 'dead', 'blown'])
+      expect(titles(word)).toContain('"fuzzy":false');
+    expect(titles('batery')).toContain('"fuzzy":0.2');
   });
 
   test('a reference is met exactly: RT1 is not RT2, R1 is not R10', () => {

@@ -25,6 +25,25 @@ for (const row of rows)
     byPhrase.set(key, [...(byPhrase.get(key) ?? []), ...others]);
   }
 
+/** `open circuit` and `dead short` say no more than the word of their row that stands in them. */
+function shortest(phrase: string[]): string[] {
+  const inside = (byPhrase.get(phrase.join(' ')) ?? []).find(
+    (other) => other.length < phrase.length && other.every((term) => phrase.includes(term)),
+  );
+  return inside ?? phrase;
+}
+
+/** What else its rows say for a phrase, each once. */
+function othersOf(phrase: string[]): string[][] {
+  const said = new Map<string, string[]>();
+  for (const other of byPhrase.get(phrase.join(' ')) ?? []) {
+    const short = shortest(other);
+    said.set(short.join(' '), short);
+  }
+  said.delete(phrase.join(' '));
+  return [...said.values()];
+}
+
 const hasDigit = (term: string) => /\d/.test(term);
 
 /** One term: a reference or value as it stands, a word with its endings and one or two slips. */
@@ -32,7 +51,8 @@ const exactly = (term: string, typing: boolean): Question => ({
   combineWith: 'AND',
   queries: [term],
   prefix: typing || (term.length >= 3 && !hasDigit(term)),
-  fuzzy: term.length >= 4 && !hasDigit(term) ? 0.2 : false,
+  // A word of the trade is spelt as it is meant: `open` is no slip for `pen`.
+  fuzzy: term.length >= 4 && !hasDigit(term) && !byPhrase.has(term) ? 0.2 : false,
 });
 
 const otherwise = (terms: string[]): Question => ({
@@ -40,7 +60,7 @@ const otherwise = (terms: string[]): Question => ({
   queries: terms,
   prefix: false,
   fuzzy: false,
-  boostTerm: () => 0.7,
+  boostTerm: () => 0.35,
 });
 
 type Unit = { terms: string[]; others: string[][] };
@@ -57,12 +77,13 @@ function unitsOf(text: string): Unit[] {
         break;
       }
     const phrase = words.slice(i, i + taken).map((w) => w.terms);
-    const others = [...(byPhrase.get(keyOf(phrase)) ?? [])];
+    const terms = shortest(phrase.map(([best = '']) => best));
+    const others = othersOf(terms);
     const [first, ...rest] = phrase[0] ?? [];
     // A value may stand as it was typed (in a marking), a dashed word in pieces.
     if (taken === 1 && rest.length > 0)
       others.push(first?.startsWith('=') ? rest.slice(0, 1) : rest);
-    units.push({ terms: phrase.map((terms) => terms[0] ?? ''), others });
+    units.push({ terms, others });
     i += taken;
   }
   return units;

@@ -4,11 +4,18 @@
  */
 export const SYNONYMS: readonly (readonly string[])[] = [
   // Parts
-  ['mov', 'varistor', 'vdr', 'metal oxide varistor', 'voltage dependent resistor'],
-  ['ptc', 'thermistor', 'resettable fuse', 'positive temperature coefficient'],
+  [
+    'mov',
+    'varistor',
+    'vdr',
+    'metal oxide varistor',
+    'voltage dependent resistor',
+    'surge absorber',
+  ],
+  ['ptc', 'thermistor', 'resettable fuse', 'polyfuse', 'positive temperature coefficient'],
   ['ntc', 'thermistor', 'inrush limiter', 'negative temperature coefficient'],
-  ['gdt', 'gas tube', 'gas discharge tube', 'surge arrester', 'spark gap'],
-  ['zener', 'tvs', 'transient suppressor', 'avalanche diode'],
+  ['gdt', 'gas tube', 'gas discharge tube', 'arrester', 'surge arrester', 'spark gap'],
+  ['zener', 'tvs', 'transient suppressor', 'transient voltage suppressor', 'avalanche diode'],
   ['clamp', 'clamp transistor', 'clamping diode', 'diode connected transistor'],
   ['capacitor', 'cap', 'condenser'],
   ['electrolytic', 'filter capacitor', 'smoothing capacitor', 'reservoir capacitor'],
@@ -34,7 +41,7 @@ export const SYNONYMS: readonly (readonly string[])[] = [
 
   // What went wrong
   ['open', 'blown', 'open circuit', 'interrupted'],
-  ['short', 'shorted', 'short circuit', 'bridged'],
+  ['short', 'shorted', 'short circuit', 'dead short', 'bridged'],
   ['leak', 'leaky', 'leakage', 'leaking', 'leaked'],
   ['drift', 'drifted', 'drifting', 'wander', 'unstable', 'creep'],
   ['dead', 'no display', 'no power', 'nothing display', 'will turn', 'blank'],
