@@ -89,6 +89,9 @@ describe('parseResistance refuses two readings and names both', () => {
   ])('%s', (text, could) => {
     const read = parseResistance(text);
     expect(read).toMatchObject({ ok: false, could });
+    // Each stands in the sentence once, as it would be typed.
+    const said = read.ok ? [] : read.reason.split(' given: ')[1]?.split(/ or |[;,] /);
+    if (could[1] !== 'OL' && text !== '4E7') expect(said?.slice(0, 2)).toEqual(could);
     for (const one of could) expect(parseResistance(one).ok, one).toBe(true);
   });
 });

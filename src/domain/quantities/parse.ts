@@ -23,14 +23,14 @@ const UNIT = '(?:Ω|ohms?|Ohms?|OHMS?)';
 const OVER_RANGE = new RegExp(
   `^(?:\\.?[oO0]\\.?[lL]\\.?(?: ?(?:${PREFIX})?${UNIT}?)?|∞ ?(?:(?:${PREFIX})?${UNIT})?)$`,
 );
-const INFIX = new RegExp(`^(\\d*)(R|r|${PREFIX})(\\d+)${UNIT}?$`);
+const INFIX = new RegExp(`^(\\d*)(R|r|${PREFIX})(\\d+) ?${UNIT}?$`);
 const SUFFIX = new RegExp(
   `^([\\d., ]*[\\d.,])(?:[eE]([+-]?\\d+))? ?(?:(${PREFIX})? ?${UNIT}?|R|r)$`,
 );
 const EITHER_E = /^(\d+)E(\d+)$/;
 
 /**
- * Reads a resistance as a technician types it or a meter shows it: `1k6 1.6k 1,6k 4M7 0R33 R47 470 470R
+ * Reads a resistance as a technician types it or a meter shows it: `1k6 1k6 Ω 1.6k 1,6k 4M7 0R33 R47 470 470R
  * 470Ω 2.2 MΩ 12m 1e6 OL 0L O.L >60M ∞`. Case tells milli (`m`) from mega (`M`).
  *
  * A text with two readings (`1,600`, `1.600.000`, `4E7`) is refused with both. At most 40 characters, 1 nΩ
@@ -65,7 +65,8 @@ function parseBound(text: string): ResistanceReading {
   const bound = parseValue(text);
   if (!bound.ok) {
     if (!bound.could) return bound;
-    return { ...bound, could: bound.could.map((one) => (one === 'OL' ? one : `>${one}`)) };
+    const could = bound.could.map((one) => (one === 'OL' ? one : `>${one}`));
+    return { ...bound, reason: ambiguous(`>${text}`, could), could };
   }
   if (bound.kind === 'over-range') return bound;
   if (bound.ohms === 0) return refuse('">0" given, the top of the range is needed, such as >60M');
@@ -94,10 +95,13 @@ function parseValue(text: string): ResistanceReading {
   const decimal = readDecimal(number.trim());
   if (decimal.ok) return toOhms(text, decimal, prefix, Number(power));
   const tail = `${power === '0' ? '' : `e${power}`}${prefix}`;
-  return decimal.could
-    ? { ...decimal, could: decimal.could.map((one) => (one === 'OL' ? one : one + tail)) }
-    : decimal;
+  if (!decimal.could || tail === '') return decimal;
+  const could = decimal.could.map((one) => (one === 'OL' ? one : one + tail));
+  return { ...decimal, reason: ambiguous(text, could), could };
 }
+
+const ambiguous = (text: string, could: readonly string[]) =>
+  `"${text}" given: ${could.join(' or ')}; type one of them`;
 
 function toOhms(text: string, decimal: Decimal, prefix: string, power: number): ResistanceReading {
   const exponent = decimal.exponent + (TYPED_PREFIXES[prefix] ?? 0) + power;

@@ -76,10 +76,8 @@ function parsed(
   if (input.part === null && input.from === input.to)
     return refuseField('to', 'Both points are the same: give two different points.');
   const value = parseResistance(input.typed);
-  if (!value.ok) {
-    const could = value.could?.length ? ` It could be ${value.could.join(' or ')}.` : '';
-    return refuseField('typed', `${value.reason}${could}`);
-  }
+  // A reason names what the text could be by itself.
+  if (!value.ok) return refuseField('typed', `${value.reason}.`);
   return value.kind === 'over-range'
     ? done({ ohms: null, overRange: true, resolution: null })
     : done({ ohms: value.ohms, overRange: false, resolution: value.resolution });
