@@ -15,10 +15,14 @@ export const AuditLine = z.object({
 });
 export type AuditLine = z.output<typeof AuditLine>;
 
+/** Sign-ins are by far the most lines, and seldom what is looked for. */
+export const SIGN_IN = 'session.opened';
+export const BUT_SIGN_INS = 'but-sign-ins';
+
 export const AuditQuery = ListQuery.extend({
   /** Text in the object or in the name of who did it. */
   q: z.string().trim().max(100).default(''),
-  /** An action, or an area with its dot (`person.`). */
+  /** An action, an area with its dot (`person.`), or `but-sign-ins` for all but those. */
   action: z.string().trim().max(60).default(''),
   by: filter(Id),
   /** Days of the shop's calendar, both included. */

@@ -6,6 +6,7 @@ import * as z from 'zod/v4';
 import type { Block, FaultBody, Inline } from '@/domain/faults/body';
 import { SECTIONS } from '@/domain/faults/body';
 import { isSafeLink } from '@/domain/faults/links';
+import { wholePairs } from './common';
 
 export const BODY_LIMITS = {
   bytes: 200_000,
@@ -14,14 +15,15 @@ export const BODY_LIMITS = {
   listDepth: 3,
 } as const;
 
-// No control characters, no lone surrogates, nothing that turns the direction of the text around.
-const PLAIN = /^[^\u0000-\u001f\u007f-\u009f\u202a-\u202e\u2066-\u2069\p{Cs}]*$/u;
+// No control characters, nothing that turns the direction of the text around.
+const PLAIN = /^[^\u0000-\u001f\u007f-\u009f\u202a-\u202e\u2066-\u2069]*$/;
 const plain = (max: number, min = 0) =>
   z
     .string()
     .min(min, 'Empty: text is needed.')
     .max(max, `Longer than ${max} characters: shorten it.`)
-    .regex(PLAIN, 'Has a control character: plain text is needed.');
+    .regex(PLAIN, 'Has a control character: plain text is needed.')
+    .refine(wholePairs, 'Has half of a character: whole ones are needed.');
 
 const Href = z
   .string()

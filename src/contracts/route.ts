@@ -12,7 +12,8 @@ export type Route = {
   summary: string;
   who: Who;
   params?: z.ZodType;
-  query?: z.ZodType;
+  /** Names in the address; others are refused. */
+  query?: z.ZodObject;
   body?: z.ZodType;
   /** The answer's JSON; null when there is none (204) or it is not JSON (then `media` says what). */
   answer: z.ZodType | null;

@@ -125,6 +125,7 @@ test('signing out everywhere ends every session, this one too', async () => {
   const other = cookieOf(await shop.signIn(email));
   const answer = await post(cookie, { do: 'everywhere' });
   expect([answer.status, answer.headers.get('location')]).toEqual([303, '/sign-in']);
+  expect(answer.headers.get('clear-site-data')).toBe('"cache"');
   expect([await isSignedIn(cookie), await isSignedIn(other)]).toEqual([false, false]);
 });
 

@@ -99,6 +99,24 @@ test('the page shows the lines with their filter', async () => {
   expect(html).not.toContain('part:RV1');
 });
 
+test('the page leaves sign-ins out unless asked, says how many, and so does its file', async () => {
+  const signIns = await list('action=session.opened');
+  expect(signIns.length).toBeGreaterThan(0);
+  const page = async (query = '') => (await get(`/audit${query}`)).text();
+  const html = await page();
+  expect(html).toMatch(/<option value="but-sign-ins" selected/);
+  const rows = (text: string) => text.replace(/<select[\s\S]*?<\/select>/g, '');
+  expect(rows(html)).not.toMatch(/>\s*session\.opened/);
+  expect(html).toContain('price.dropped');
+  const said = signIns.length === 1 ? '1 sign-in is' : `${signIns.length} sign-ins are`;
+  expect(html.replace(/\s+/g, ' ')).toContain(`${said} left out.`);
+  expect(rows(await page('?action='))).toMatch(/>\s*session\.opened/);
+  expect(await page('?action=')).not.toContain('left out.');
+  expect(await page('?format=csv')).not.toContain('session.opened');
+  expect(await page('?format=csv&action=')).toContain('session.opened');
+  expect(await found('action=but-sign-ins&q=zita')).toEqual([]);
+});
+
 const HOUR = 3_600_000;
 async function job(onceKey: string, more: Partial<typeof outbox.$inferInsert>) {
   const now = new Date();

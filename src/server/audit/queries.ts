@@ -1,23 +1,27 @@
 /** Reading the audit log. */
-import { and, asc, count, desc, eq, gte, like, lt, or, type SQL } from 'drizzle-orm';
+import { and, asc, count, desc, eq, gte, like, lt, ne, or, type SQL } from 'drizzle-orm';
 import type { Queryable } from '@/db/client';
 import { audit } from '@/db/schema/people';
-import type { AuditLine, AuditQuery } from '@/contracts/audit';
+import { BUT_SIGN_INS, SIGN_IN, type AuditLine, type AuditQuery } from '@/contracts/audit';
 import { startOfDay } from '@/domain/time/shop-day';
 import { containing } from '../customers/queries';
 import { afterPlace, type Place } from '../http/cursor';
 
 type Filter = Pick<AuditQuery, 'q' | 'action' | 'by' | 'from' | 'to'>;
 
+function actionIs(action: string): SQL | undefined {
+  if (action === '') return undefined;
+  if (action === BUT_SIGN_INS) return ne(audit.action, SIGN_IN);
+  return action.endsWith('.')
+    ? like(audit.action, containing(action).slice(1))
+    : eq(audit.action, action);
+}
+
 function matching({ q, action, by, from, to }: Filter, zone: string): SQL | undefined {
   const pattern = containing(q);
   return and(
     q ? or(like(audit.object, pattern), like(audit.actorName, pattern)) : undefined,
-    action.endsWith('.')
-      ? like(audit.action, `${containing(action).slice(1)}`)
-      : action
-        ? eq(audit.action, action)
-        : undefined,
+    actionIs(action),
     by ? eq(audit.actorId, by) : undefined,
     from ? gte(audit.at, startOfDay(from, zone)) : undefined,
     to ? lt(audit.at, startOfDay(to, zone, 1)) : undefined,

@@ -77,6 +77,18 @@ function readVersion(route: Route, request: Request): Outcome<number> {
     : refuse('version-needed', 'If-Match is missing or not a version: send the ETag you read.');
 }
 
+/** A mistyped filter must not answer the whole list: names that the route does not know are refused. */
+function unknownNames(route: Route, given: URLSearchParams): Refusal | null {
+  const known = route.query ? Object.keys(route.query.shape) : [];
+  const names = [...new Set(given.keys())].filter((name) => !known.includes(name));
+  const needed = known.length > 0 ? `known are ${known.join(', ')}` : 'none is taken here';
+  const errors = names
+    .slice(0, 10)
+    .map((name) => ({ path: name.slice(0, 60), message: `Not a query name: ${needed}.` }));
+  const [first] = errors;
+  return first ? refuse('invalid', `${first.path}: ${first.message}`, { errors }) : null;
+}
+
 /** Judges a body before its schema does, where one answer has to name more than a schema can see. */
 type BodyRefusal = (raw: unknown) => Refusal | null;
 
@@ -92,6 +104,8 @@ async function answer(
   // A malformed key in the address names nothing: the same answer as for one that is not there.
   if (!params.ok)
     return problemResponse(refuse('absent', 'There is no such thing, or it is not open to you.'));
+  const unknown = unknownNames(route, context.url.searchParams);
+  if (unknown) return problemResponse(unknown);
   const query = parse(route.query, Object.fromEntries(context.url.searchParams), 'invalid');
   if (!query.ok) return problemResponse(query);
   const version = readVersion(route, context.request);

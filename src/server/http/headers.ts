@@ -27,5 +27,8 @@ export function secure(
       `${policy.replace(/;\s*$/, '')}; style-src-attr 'unsafe-inline'; connect-src 'self' ${store}`,
     );
   }
-  return response;
+  // A page sets its status after the library wrote "OK" beside it.
+  return response.statusText === 'OK' && response.status !== 200
+    ? new Response(response.body, { status: response.status, headers })
+    : response;
 }
