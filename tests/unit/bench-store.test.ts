@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import type { BenchReading } from '@/contracts/bench';
 import { isStruck, EMPTY, type Cells } from '@/islands/bench-sheet/rows';
+import { pasteWords } from '@/islands/bench-sheet/paste-report';
 import { openSheet } from '@/islands/bench-sheet/sheet-store';
 import { board, saved } from '../fixtures/bench-board';
 
@@ -255,6 +256,7 @@ describe('filling rows', () => {
     store.paste('as-found', last().key, 'from', {
       kind: 'rows',
       rows: [whole, { ...whole, from: 'v', to: 'q' }, { ...whole, typed: 'foo' }],
+      lines: [1, 2, 3],
     });
     await settle();
     expect(sent.map(({ body }) => [body['from'], body['to']])).toEqual([
@@ -285,6 +287,86 @@ describe('filling rows', () => {
       ['saved', false],
       ['draft', false],
     ]);
+  });
+
+  const lines = (n: number, without: number[] = []) => ({
+    kind: 'rows' as const,
+    rows: Array.from({ length: n }, (_, i) => ({
+      ...whole,
+      typed: without.includes(i + 1) ? '' : `${i + 1}`,
+    })),
+    lines: Array.from({ length: n }, (_, i) => i + 1),
+  });
+  const four = () => [1, 2, 3, 4].map((id) => saved(id));
+
+  it('says how many pasted lines found no room, and which have no reading', async () => {
+    const { store, live, last, settle } = sheetWith(four());
+    store.paste('as-found', last().key, 'from', lines(81, [4, 9]));
+    await settle();
+    const report = store.snapshot().pasted['as-found'];
+    expect(report).toEqual({ taken: 56, empty: [4, 9], beyond: 23 });
+    expect(live()).toHaveLength(60);
+    expect(report && pasteWords(report)).toBe(
+      '56 rows taken; 25 lines not: 23 because the sheet holds 60 readings, no reading in lines 4, 9. Ctrl+Z takes the paste back.',
+    );
+  });
+
+  it('says the same of a column that goes beyond the last row', () => {
+    const { store, last } = sheetWith(Array.from({ length: 59 }, (_, i) => saved(i + 1)));
+    const key = last().key;
+    store.paste('as-found', key, 'typed', { kind: 'column', values: ['1k', '2k', '3k'] });
+    expect(store.snapshot().pasted['as-found']).toEqual({ taken: 1, empty: [], beyond: 2 });
+  });
+
+  it('takes a paste back as one step, struck or saved or waiting', async () => {
+    const { store, sent, rows, last, settle } = sheetWith(four(), [{ status: 503 }]);
+    store.paste('as-found', last().key, 'from', lines(5));
+    await settle();
+    expect(rows().map(({ state }) => state.is)).toContain('failed');
+    store.undo('as-found');
+    await settle();
+    expect(
+      rows()
+        .map(({ key }) => key)
+        .slice(0, 4),
+    ).toEqual(['r1', 'r2', 'r3', 'r4']);
+    expect(rows()).toHaveLength(5);
+    expect(rows().filter(isStruck)).toEqual([]);
+    expect(sent.filter(({ method }) => method === 'DELETE')).toHaveLength(4);
+    expect(store.snapshot().pasted['as-found']).toBeNull();
+    expect(store.unsaved()).toBe(false);
+  });
+
+  it('takes it back also while its rows are being saved', async () => {
+    const { store, rows, last, settle } = sheetWith(four());
+    store.paste('as-found', last().key, 'from', lines(3));
+    store.undo('as-found');
+    await settle();
+    await settle();
+    expect(rows()).toHaveLength(5);
+    expect(rows().filter(isStruck)).toEqual([]);
+  });
+
+  it('gives cells that a column was pasted over what they had', async () => {
+    const { store, live, settle } = sheetWith(four());
+    const before = live().map(({ cells }) => cells.typed);
+    store.paste('as-found', 'r2', 'typed', { kind: 'column', values: ['5k', '6k'] });
+    await settle();
+    expect(live()[1]?.saved?.typed).toBe('5k');
+    store.undo('as-found');
+    await settle();
+    expect(live().map(({ cells }) => cells.typed)).toEqual(before);
+    expect(live()[1]?.saved?.typed).toBe(before[1]);
+  });
+
+  it('undoes by itself what was done by hand after a paste, and the paste no more', async () => {
+    const { store, live, last, settle, write } = sheetWith(four());
+    store.paste('as-found', last().key, 'from', lines(2));
+    await settle();
+    write(last().key, { ...whole, typed: '9k' });
+    expect(store.snapshot().pasted['as-found']).toBeNull();
+    expect(store.undo('as-found')).toBeNull();
+    expect(live()).toHaveLength(8);
   });
 
   it('does not offer again what was struck', async () => {

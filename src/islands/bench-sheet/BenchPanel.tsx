@@ -12,7 +12,7 @@
  * - Below the last row there is always an empty one that copies From and Switch. So four readings in full:
  *   V Tab P Tab volts Tab OL Enter, then (From and Switch are copied, the cursor is on To)
  *   COM Enter 1k2 Enter · Q Enter 0R8 Enter · A Enter 4.99M Enter.
- * - Delete strikes the row, Ctrl+Z (or "Bring it back") undoes it.
+ * - Delete strikes the row, Ctrl+Z (or "Bring it back") undoes it; after a paste Ctrl+Z takes the whole paste back.
  * - M takes the proposed next reading, in Reading and in cells where no name begins with M; Alt+M everywhere; Enter on
  *   its row, or its button, as well. The cursor then stands on the reading of the new row.
  * - A reading with two meanings (1,600) stays open on Enter; Tab reaches the buttons that settle it.
@@ -46,7 +46,11 @@ export function BenchPanel(props: BenchPanelProps) {
       newClientKey,
     }),
   );
-  const { sheets, saves } = useSyncExternalStore(store.subscribe, store.snapshot, store.snapshot);
+  const { sheets, saves, pasted } = useSyncExternalStore(
+    store.subscribe,
+    store.snapshot,
+    store.snapshot,
+  );
   const [phase, setPhase] = useState<Phase>('as-found');
   const first = { 'as-found': suspects.asFound, 'after-repair': suspects.afterRepair };
   const { told, failed, again } = useSuspects(ticketNumber, first, phase, saves[phase]);
@@ -89,6 +93,7 @@ export function BenchPanel(props: BenchPanelProps) {
         locked={locked}
         told={told}
         pointed={pointed}
+        pasted={pasted[phase]}
       />
       <SuspectsPanel
         phase={phase}

@@ -2,6 +2,7 @@ import type { Suspects } from '@/contracts/bench';
 import { MAX_READINGS } from '@/contracts/compute';
 import type { Board, Phase } from './panel-props';
 import { isStruck, type Row } from './rows';
+import { pasteWords, type PasteReport } from './paste-report';
 import { SheetGrid } from './SheetGrid';
 import type { Sheets, SheetStore } from './sheet-store';
 
@@ -47,6 +48,7 @@ export function SheetPanel({
   locked,
   told,
   pointed,
+  pasted,
 }: {
   sheets: Sheets;
   phase: Phase;
@@ -58,6 +60,8 @@ export function SheetPanel({
   locked: React.ReactNode;
   told: Suspects | null;
   pointed: string | null;
+  /** What became of the last paste. */
+  pasted: PasteReport | null;
 }) {
   const full = sheets[phase].filter((row) => !isStruck(row)).length >= MAX_READINGS;
   const empty = sheets[phase].length === 0;
@@ -110,6 +114,11 @@ export function SheetPanel({
       <noscript>
         <WithoutScript after={sheets['after-repair']} editable={editable} />
       </noscript>
+      {editable && (
+        <p className="bench-pasted" role="status">
+          {pasted && pasteWords(pasted)}
+        </p>
+      )}
       {editable && (
         <p className="sheet-foot bench-keys">
           {full ? (

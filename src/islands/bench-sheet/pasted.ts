@@ -7,7 +7,8 @@ export type Pasted =
   | { kind: 'cell'; text: string }
   /** One column of values, for the cells from here down. */
   | { kind: 'column'; values: string[] }
-  | { kind: 'rows'; rows: Cells[] };
+  /** `lines` are the numbers of the rows' lines in the text. */
+  | { kind: 'rows'; rows: Cells[]; lines: number[] };
 
 /** Cells of one line longer than this are cut: no name and no reading is. */
 const LONGEST = 40;
@@ -19,7 +20,10 @@ const LONGEST = 40;
  */
 export function readPasted(text: string): Pasted {
   const separator = text.includes('\t') ? '\t' : text.includes(';') ? ';' : ',';
-  const grid = split(text, separator).filter((line) => line.some((cell) => cell !== ''));
+  const numbered = split(text, separator)
+    .map((line, i) => ({ line, number: i + 1 }))
+    .filter(({ line }) => line.some((cell) => cell !== ''));
+  const grid = numbered.map(({ line }) => line);
   const width = Math.max(0, ...grid.map((line) => line.length));
   const [only] = grid;
   const sentence = separator !== '\t' && !isReading(only?.at(-1) ?? '');
@@ -27,7 +31,12 @@ export function readPasted(text: string): Pasted {
     return { kind: 'cell', text: text.trim().slice(0, LONGEST) };
   const lone = width <= 1 || (separator === ',' && grid.every((line) => isReading(line.join(','))));
   if (lone) return { kind: 'column', values: grid.map((line) => line.join(separator)) };
-  return { kind: 'rows', rows: grid.filter((line) => !isHeading(line)).map(cellsFrom) };
+  const rows = numbered.filter(({ line }) => !isHeading(line));
+  return {
+    kind: 'rows',
+    rows: rows.map(({ line }) => cellsFrom(line)),
+    lines: rows.map(({ number }) => number),
+  };
 }
 
 const isReading = (text: string) => {

@@ -3,6 +3,7 @@ import type { BenchReading } from '@/contracts/bench';
 import { MAX_READINGS } from '@/contracts/compute';
 import { named } from './completion';
 import type { Board, Phase } from './panel-props';
+import type { PasteReport } from './paste-report';
 import type { Pasted } from './pasted';
 import {
   bodyOf,
@@ -22,7 +23,12 @@ import { savingOf, type Ask, type Outcome } from './saving';
 
 export type Sheets = Readonly<Record<Phase, readonly Row[]>>;
 /** What the screen draws: the rows, and how often each phase was saved since the page was made. */
-export type Snapshot = { sheets: Sheets; saves: Readonly<Record<Phase, number>> };
+export type Snapshot = {
+  sheets: Sheets;
+  saves: Readonly<Record<Phase, number>>;
+  /** What became of the last paste; null once something else was done. */
+  pasted: Readonly<Record<Phase, PasteReport | null>>;
+};
 
 export type SheetStore = ReturnType<typeof openSheet>;
 
@@ -43,6 +49,8 @@ export function openSheet(options: Options) {
   /** Rows to strike once the save that is under way has ended. */
   const toStrike = new Set<string>();
   const listeners = new Set<() => void>();
+  /** Rows of a paste that was taken back: no line stays to bring them back by. */
+  const unpasted = new Set<string>();
   /** Offered rows that were struck. */
   const refused = new Set<string>();
   let made = 0;
@@ -61,10 +69,17 @@ export function openSheet(options: Options) {
   let now: Snapshot = {
     sheets: { 'as-found': withEntry(found), 'after-repair': withEntry(after) },
     saves: { 'as-found': 0, 'after-repair': 0 },
+    pasted: { 'as-found': null, 'after-repair': null },
+  };
+  /** For each phase the rows a paste wrote, with the cells they had; null when the last deed was no paste. */
+  const toUnpaste: Record<Phase, Map<string, Cells | null> | null> = {
+    'as-found': null,
+    'after-repair': null,
   };
 
   function publish(phase: Phase, rows: readonly Row[], saved = 0) {
     now = {
+      ...now,
       sheets: { ...now.sheets, [phase]: withEntry(rows) },
       saves: { ...now.saves, [phase]: now.saves[phase] + saved },
     };
@@ -112,6 +127,12 @@ export function openSheet(options: Options) {
     }
   }
 
+  /** What is done by hand after a paste is undone before it, and by itself. */
+  function forgetPaste(phase: Phase) {
+    toUnpaste[phase] = null;
+    if (now.pasted[phase]) now = { ...now, pasted: { ...now.pasted, [phase]: null } };
+  }
+
   async function strike(phase: Phase, key: string): Promise<void> {
     const row = rowOf(phase, key);
     if (!row || isStruck(row)) return;
@@ -119,13 +140,15 @@ export function openSheet(options: Options) {
       toStrike.add(key);
       return;
     }
+    const traceless = unpasted.delete(key);
+    const others = () => now.sheets[phase].filter((other) => other.key !== key);
     const kept = now.sheets[phase].filter((other) => other.key === key || !isStruck(other));
     if (!row.saved) {
       clientKeys.delete(key);
       if (row.offered) refused.add(key);
-      const rows = isBlank(row) ? kept.filter((other) => other.key !== key) : kept;
-      publish(phase, rows);
-      if (!isBlank(row)) change(phase, key, { state: { is: 'struck' } });
+      publish(phase, kept);
+      if (isBlank(row) || traceless) publish(phase, others());
+      else change(phase, key, { state: { is: 'struck' } });
       return;
     }
     busy.add(key);
@@ -135,7 +158,8 @@ export function openSheet(options: Options) {
     busy.delete(key);
     if (outcome.is !== 'gone') return fail(phase, key, outcome, 'strike');
     clientKeys.delete(key);
-    change(phase, key, { saved: null, state: { is: 'struck' } }, 1);
+    if (traceless) publish(phase, others(), 1);
+    else change(phase, key, { saved: null, state: { is: 'struck' } }, 1);
   }
 
   function write(phase: Phase, key: string, cells: Partial<Cells>) {
@@ -156,7 +180,10 @@ export function openSheet(options: Options) {
     },
     snapshot: () => now,
     /** Writes cells of a row, and saves the row when nothing is missing. */
-    write,
+    write(phase: Phase, key: string, cells: Partial<Cells>) {
+      forgetPaste(phase);
+      write(phase, key, cells);
+    },
     /** Offers, after the repair, the points measured as found that have no reading there yet. */
     offer() {
       if (!editable) return;
@@ -173,28 +200,58 @@ export function openSheet(options: Options) {
     },
     /**
      * Pasted lines become rows at the end; a column of values goes down from the cell it was pasted into. What can be
-     * saved is saved, the rest stays to be corrected.
+     * saved is saved, the rest stays to be corrected; lines without a reading, and those for which there is no room,
+     * are not taken. The snapshot says what became of each.
      */
     paste(phase: Phase, key: string, field: Field, pasted: Exclude<Pasted, { kind: 'cell' }>) {
-      if (pasted.kind === 'rows') {
-        for (const cells of pasted.rows) {
+      if (!editable) return;
+      const before = new Map<string, Cells | null>();
+      const report = { taken: 0, empty: [] as number[], beyond: 0 };
+      const put = (row: Row, cells: Partial<Cells>) => {
+        before.set(row.key, isBlank(row) ? null : row.cells);
+        write(phase, row.key, cells);
+        report.taken += 1;
+      };
+      if (pasted.kind === 'rows')
+        pasted.rows.forEach((cells, i) => {
           const entry = now.sheets[phase].findLast((row) => isBlank(row) && !isStruck(row));
-          if (entry) write(phase, entry.key, named(cells, board));
+          if (cells.typed === '') report.empty.push(pasted.lines[i] ?? i + 1);
+          else if (entry) put(entry, named(cells, board));
+          else report.beyond += 1;
+        });
+      else {
+        let at = now.sheets[phase].findIndex((row) => row.key === key);
+        for (const value of pasted.values) {
+          while (now.sheets[phase][at] && isStruck(now.sheets[phase][at] as Row)) at += 1;
+          const row = now.sheets[phase][at];
+          if (row) put(row, { [field]: value });
+          else report.beyond += 1;
+          at += 1;
         }
-        return;
       }
-      let at = now.sheets[phase].findIndex((row) => row.key === key);
-      for (const value of pasted.values) {
-        while (now.sheets[phase][at] && isStruck(now.sheets[phase][at] as Row)) at += 1;
-        const row = now.sheets[phase][at];
-        if (!row) return;
-        write(phase, row.key, { [field]: value });
-        at += 1;
-      }
+      toUnpaste[phase] = before.size > 0 ? before : null;
+      now = { ...now, pasted: { ...now.pasted, [phase]: report } };
+      publish(phase, now.sheets[phase]);
     },
-    strike,
-    /** Brings the struck row back. */
+    strike(phase: Phase, key: string) {
+      forgetPaste(phase);
+      return strike(phase, key);
+    },
+    /** Takes the last paste back whole, else brings the struck row back; answers a row to go to. */
     undo(phase: Phase): string | null {
+      const before = toUnpaste[phase];
+      if (before) {
+        forgetPaste(phase);
+        for (const [key, cells] of before) {
+          if (cells) write(phase, key, cells);
+          else {
+            unpasted.add(key);
+            void strike(phase, key);
+          }
+        }
+        publish(phase, now.sheets[phase]);
+        return now.sheets[phase].findLast(isBlank)?.key ?? null;
+      }
       const struck = now.sheets[phase].find(isStruck);
       if (!struck) return null;
       change(phase, struck.key, { state: { is: 'draft' } });
