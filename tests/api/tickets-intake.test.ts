@@ -13,6 +13,7 @@ import {
   said,
   ZONE,
   type DeskShop,
+  type Problem,
   type Taken,
 } from '../fixtures/desk-shop';
 import { SOON } from '../fixtures/soon';
@@ -75,10 +76,27 @@ describe('the customer', () => {
 });
 
 describe('the instrument', () => {
+  test('is taken in once: not again while its ticket is open', async () => {
+    const instrument = { maker: 'Tessaly', model: 'T9', serial: 'OPEN-1' };
+    const body = intakeOf({ instrument, customer: { name: 'Ida', email: mailbox() } });
+    const answers = await Promise.all(Array.from({ length: 10 }, () => shop.take(body)));
+    const made = answers.filter((a) => a.status === 201);
+    expect(answers.filter((a) => a.status === 409)).toHaveLength(9);
+    expect(made).toHaveLength(1);
+    const late = await shop.take(body);
+    expect(late.status).toBe(409);
+    const refused = (await late.json()) as Problem & { openTicket: string };
+    expect(refused.errors?.[0]?.path).toBe('instrument.serial');
+    const numbers = await Promise.all(made.map((a) => said<Taken>(a)));
+    expect([refused.openTicket]).toEqual(numbers.map((t) => t.number));
+  });
+
   test('the same serial comes back as the same instrument with its history', async () => {
     const instrument = { maker: 'Tessaly', model: 'T9', serial: 'BACK-1' };
     const first = await shop.taken({ instrument, symptoms: ['dead'] });
-    const second = await shop.taken({ instrument, symptoms: ['drifts'] });
+    const customer = { id: (await shop.detail(first.number)).customer.id };
+    await shop.stand(first.number, 'handed-over');
+    const second = await shop.taken({ instrument, customer, symptoms: ['drifts'] });
     const { board, instrument: known } = await shop.detail(second.number);
     expect(board).toBe('LB-40 rev C');
     expect((await shop.detail(first.number)).instrument).toEqual(known);
@@ -93,7 +111,12 @@ describe('the instrument', () => {
   test('of a new owner it changes hands; the earlier ticket stays with who brought it', async () => {
     const instrument = { maker: 'Tessaly', model: 'T9', serial: 'SOLD-1' };
     const seller = await shop.taken({ instrument, customer: { name: 'Seller' } });
+    await shop.stand(seller.number, 'handed-over');
     const customer = { name: 'Buyer' };
+    const unsaid = await shop.take(intakeOf({ instrument, customer }));
+    expect(unsaid.status).toBe(409);
+    expect((await problem(unsaid)).errors?.[0]?.path).toBe('changedHands');
+    expect(await shop.db.$count(customers, eq(customers.name, 'Buyer'))).toBe(0);
     const buyer = await shop.taken({ instrument, customer, changedHands: true });
     const [one, two] = [await shop.detail(seller.number), await shop.detail(buyer.number)];
     expect(two.instrument.id).toBe(one.instrument.id);
@@ -102,7 +125,9 @@ describe('the instrument', () => {
     const [row] = await shop.db.select().from(instruments).where(of);
     expect(row).toMatchObject({ customerId: two.customer.id, version: 2 });
     const cookie = await shop.enter(buyer);
-    expect((await shop.get(cookie, `/api/status/${buyer.number}`)).status).toBe(200);
+    const status = await shop.get(cookie, `/api/status/${buyer.number}`);
+    expect(status.status).toBe(200);
+    expect(await status.text()).not.toContain('Seller');
     expect((await shop.get(cookie, `/api/status/${seller.number}`)).status).toBe(404);
   });
 
@@ -125,7 +150,7 @@ describe('numbers', () => {
     const before = running((await shop.taken()).number);
     const answers = await Promise.all(
       Array.from({ length: 30 }, (_, i) => {
-        const instrument = { maker: 'Brandreth', model: 'B-Rush', serial: `R-${i % 15}` };
+        const instrument = { maker: 'Brandreth', model: 'B-Rush', serial: `R-${i}` };
         return shop.take(intakeOf({ instrument, ...(i % 3 ? {} : { symptoms: [] }) }));
       }),
     );
@@ -137,7 +162,7 @@ describe('numbers', () => {
       Array.from({ length: 20 }, (_, i) => before + 1 + i),
     );
     expect(await shop.db.$count(models, eq(models.name, 'B-Rush'))).toBe(1);
-    expect(await shop.db.$count(instruments, like(instruments.serial, 'R-%'))).toBe(10);
+    expect(await shop.db.$count(instruments, like(instruments.serial, 'R-%'))).toBe(20);
     const other = eq(ticketNumbers.month, '0102');
     expect(await shop.db.select().from(ticketNumbers).where(other)).toEqual([
       { month: '0102', last: 41 },

@@ -40,7 +40,7 @@ const ROWS: Record<string, Row> = {
     serial: 'X1',
     promised: 0,
   },
-  f: { stage: 'returned-unrepaired', customer: 'Åsa Berg', serial: 'SN-100', promised: null },
+  f: { stage: 'returned-unrepaired', customer: 'Åsa Berg', serial: 'SN-100-B', promised: null },
   g: {
     stage: 'waiting-for-parts',
     customer: 'Bram, "Oost"',

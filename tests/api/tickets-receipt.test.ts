@@ -141,7 +141,8 @@ describe('an intake repeated', () => {
     const refused = await shop.take({ ...body, symptoms: ['dead'] }, key);
     expect(refused.status).toBe(422);
     expect((await problem(refused)).errors?.[0]?.path).toBe('Idempotency-Key');
-    const senior = await shop.call('senior', 'POST', '/api/tickets', { json: body, headers: key });
+    const more = { json: intakeOf(), headers: key };
+    const senior = await shop.call('senior', 'POST', '/api/tickets', more);
     expect((await said<Taken>(senior)).number).not.toBe(first.number);
   });
 
@@ -190,6 +191,17 @@ describe('the intake form', () => {
     expect(fields.get('accessories[]')).toEqual(['case']);
     const kept = eq(customers.name, typed.name);
     expect(await shop.db.$count(customers, kept)).toBe(0);
+  });
+
+  test('sent twice it makes one ticket, and a form of its own the next', async () => {
+    const page = await shop.get(shop.cookies.counter, '/intake');
+    const [once = ''] = fieldsIn(await page.text()).get('once') ?? [];
+    const fields = { ...everyBox, name: 'Twice', email: '', serial: 'K-8', once };
+    const send = () => shop.form(shop.cookies.counter, '/intake', fields);
+    const places = (await Promise.all([send(), send()])).map((a) => a.headers.get('location'));
+    expect(places[0]).toMatch(/^\/tickets\/.+\/receipt$/);
+    expect(places[1]).toBe(places[0]);
+    expect(await shop.db.$count(customers, eq(customers.name, 'Twice'))).toBe(1);
   });
 
   test('filled rightly it takes in all of it', async () => {
