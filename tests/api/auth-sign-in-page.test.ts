@@ -37,6 +37,14 @@ test('a page that asks who you are brings you back to itself', async () => {
   expect(answer.headers.get('location')).toBe('/queue?stage=all&page=2');
 });
 
+test('a form that meets an ended session brings you back to its page', async () => {
+  const away = await shop.ask({ method: 'POST', path: '/tickets/2612-0047', form: { do: 'note' } });
+  expect(away.headers.get('location')).toBe('/sign-in?then=%2Ftickets%2F2612-0047');
+  const { email } = await shop.hire('counter');
+  const answer = await post(away.headers.get('location') ?? '', { email, password: PASSWORD });
+  expect(answer.headers.get('location')).toBe('/tickets/2612-0047');
+});
+
 test('a refusal keeps the address, not the password, and names what is wrong', async () => {
   const { email } = await shop.hire('counter');
   const answer = await post('/sign-in', { email, password: 'not <the> password' });

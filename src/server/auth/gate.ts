@@ -10,6 +10,7 @@ export function gatePage(context: APIContext): Response | Promise<Response> | nu
   if (context.routePattern === '/404' || context.routePattern === '/500') return null;
   const notHere = () => showPage(context, '/404');
   if (!rule) return notHere();
+  const { url } = context;
   const { method } = context.request;
   const reads = method === 'GET' || method === 'HEAD';
   const who = reads ? rule.get : method === 'POST' ? (rule.post ?? null) : null;
@@ -25,8 +26,7 @@ export function gatePage(context: APIContext): Response | Promise<Response> | nu
   }
   if (actor?.kind === 'staff' && roleMay(actor.role, who) && !actor.scopes) return null;
   if (actor) return notHere();
-  const back = reads
-    ? `?then=${encodeURIComponent(context.url.pathname + context.url.search)}`
-    : '';
+  // Also after a form: what was typed there may be kept by the browser, and the page is where it is looked for.
+  const back = rule.get === null ? '' : `?then=${encodeURIComponent(url.pathname + url.search)}`;
   return context.redirect(`/sign-in${back}`, 303);
 }
