@@ -54,6 +54,23 @@ describe('the panel as the server draws it', () => {
       expect(html).toContain(`aria-label="Row 3, ${name}: `);
   });
 
+  it('folds what is to be measured again beyond three rows', () => {
+    const asked = (n: number) => {
+      const doubtful = Array.from({ length: n }, (_, reading) => ({
+        reading,
+        reason: `measure row ${reading} again: no fault explains it`,
+      }));
+      const diagnosis = judged.diagnosis && { ...judged.diagnosis, doubtful };
+      return drawn({ suspects: { asFound: { ...judged, diagnosis }, afterRepair: null } });
+    };
+    expect(asked(3)).not.toContain('more to measure again');
+    const html = asked(8);
+    const [open = '', folded = ''] = html.split('5 more to measure again');
+    const blocks = (part: string) => part.match(/measure this one again/g)?.length;
+    expect([blocks(open), blocks(folded)]).toEqual([3, 5]);
+    expect(html).toMatch(/<details class="suspect-fold"><summary>5 more/);
+  });
+
   it('is locked until the cautions are ticked, and says where they are', () => {
     const html = drawn({ cautionsTicked: false });
     expect(html).toContain('<a href="#cautions">');

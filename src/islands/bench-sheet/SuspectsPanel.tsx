@@ -2,8 +2,8 @@ import type { Suspects } from '@/contracts/bench';
 import { LOOK_ELSEWHERE, summaryOf } from '@/domain/bench/summary';
 import { ProbabilityScale } from '../shared/ProbabilityScale';
 import { AloneEntry } from './AloneEntry';
+import { Doubts } from './Doubts';
 import { FoldedParts } from './FoldedParts';
-import { glued } from './glued';
 import type { Board, Phase } from './panel-props';
 import { isStruck, type Row } from './rows';
 import { gathered } from './suspect-order';
@@ -15,12 +15,6 @@ const WAITING: Readonly<Record<Phase, string>> = {
 };
 const NO_BOARD =
   'The board of this instrument is not known: readings are kept, but nothing can be ranked.';
-
-/** The reason without the call to measure again, which stands before it. */
-function whyAgain(reason: string): string {
-  const why = reason.split(' again: ').at(-1) ?? reason;
-  return why.charAt(0).toUpperCase() + why.slice(1);
-}
 
 const listed = (refs: string[]) => `${refs.slice(0, -1).join(', ')} and ${refs.at(-1) ?? ''}`;
 
@@ -133,16 +127,12 @@ export function SuspectsPanel({
         </ul>
       )}
       {diagnosis && diagnosis.doubtful.length > 0 && (
-        <ul className="rows suspect-doubts">
-          {diagnosis.doubtful.map(({ reading, reason }) => (
-            <li key={reading}>
-              <strong className="doubtful">
-                Row {numberOf(told?.expected[reading]?.reading)}: measure this one again.
-              </strong>{' '}
-              <span className="remark">{glued(whyAgain(reason))}</span>
-            </li>
-          ))}
-        </ul>
+        <Doubts
+          doubts={diagnosis.doubtful.map(({ reading, reason }) => ({
+            row: numberOf(told?.expected[reading]?.reading),
+            reason,
+          }))}
+        />
       )}
       {diagnosis && (
         <div className="suspect-folds">
