@@ -39,7 +39,9 @@ afterAll(async () => {
 /** The whole page, asked for without the browser's long work on a small file. */
 async function picture(page: Page, name: string) {
   const session = await page.context().newCDPSession(page);
-  const size = await page.evaluate(() => {
+  const size = await page.evaluate(async () => {
+    // What was asked of the page last is on the screen two frames later.
+    await new Promise((drawn) => requestAnimationFrame(() => requestAnimationFrame(drawn)));
     const { clientWidth: width, scrollHeight: height } = document.documentElement;
     return { width, height };
   });
