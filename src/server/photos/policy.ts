@@ -37,7 +37,7 @@ export async function refuseClosed(
     .select({ stage: tickets.stage })
     .from(tickets)
     .where(eq(tickets.id, ticketId))
-    .for('share');
+    .for('update');
   return ticket && isClosed(ticket.stage)
     ? refuse('conflict', 'The ticket is closed: its photos stay as they are.')
     : null;
