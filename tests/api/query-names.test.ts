@@ -18,7 +18,7 @@ test('a list refuses a filter it does not know, by its name', async () => {
   const answer = await get('/api/instruments?serial=BK-1');
   expect(answer.status).toBe(422);
   expect(await answer.json()).toMatchObject({
-    detail: 'serial: Not a query name: limit, cursor, sort, q are known.',
+    detail: 'serial: Not a query name: known are limit, cursor, sort, q.',
     errors: [{ path: 'serial' }],
   });
   expect((await get('/api/instruments?q=BK-1')).status).toBe(200);
