@@ -38,7 +38,7 @@ export async function beginPhoto(
 ): Promise<Outcome<Upload>> {
   const ticket = await ticketOfPhotos(shop.db, number);
   if (!ticket) return absent('ticket');
-  const closed = await refuseClosed(shop.db, { ticketId: ticket.id });
+  const closed = await refuseClosed(shop.db, { ticketId: ticket.id }, now);
   if (closed) return closed;
   const size = refuseSize(input.bytes);
   if (size) {
@@ -90,7 +90,7 @@ export async function completePhoto(
 ): Promise<Outcome<PhotoView>> {
   const row = await photoByPublicId(shop.db, publicId);
   if (!row) return absent('photo');
-  const closed = row.state === 'waiting' ? await refuseClosed(shop.db, row) : null;
+  const closed = row.state === 'waiting' ? await refuseClosed(shop.db, row, now) : null;
   if (closed) return closed;
   try {
     if (row.state === 'waiting' && row.uploadKey) {
@@ -135,7 +135,7 @@ export async function editPhoto(
   const row = await photoByPublicId(shop.db, id);
   if (row?.state !== 'ready') return absent('photo');
   const refusal = await inTransaction(shop.db, async (tx) => {
-    const closed = await refuseClosed(tx, row);
+    const closed = await refuseClosed(tx, row, now);
     if (closed) return closed;
     const [result] = await tx
       .update(photos)
@@ -167,7 +167,7 @@ export async function removePhoto(
   if (!row) return absent('photo');
   const mine = and(eq(photos.id, row.id), eq(photos.version, version));
   const refusal = await inTransaction(shop.db, async (tx) => {
-    const closed = await refuseClosed(tx, row);
+    const closed = await refuseClosed(tx, row, now);
     if (closed) return closed;
     // The lock makes a note that is just being saved with this photo wait, or be seen here.
     const [held] = await tx.select({ id: photos.id }).from(photos).where(mine).for('update');

@@ -14,10 +14,10 @@ type Bench = Granted<'ticket.bench'>;
 const MOST_PINS = 200;
 
 /** The photo, ready and of a ticket that is not closed. */
-async function openPhoto(db: Queryable, publicId: string): Promise<Outcome<PhotoRow>> {
+async function openPhoto(db: Queryable, publicId: string, now: Date): Promise<Outcome<PhotoRow>> {
   const row = await photoByPublicId(db, publicId);
   if (row?.state !== 'ready') return absent('photo');
-  return (await refuseClosed(db, row)) ?? done(row);
+  return (await refuseClosed(db, row, now)) ?? done(row);
 }
 
 /** What the pin stands for: a part of the photo's board under its reference, or a label alone. */
@@ -40,7 +40,7 @@ export async function addPin(
   { photo: publicId, ...input }: NewPin & { photo: string },
   now: Date,
 ): Promise<Outcome<PinView>> {
-  const open = await openPhoto(db, publicId);
+  const open = await openPhoto(db, publicId, now);
   if (!open.ok) return open;
   const photo = open.value;
   const what = await standsFor(db, photo, input);
@@ -76,9 +76,9 @@ export async function editPin(
   db: Queryable,
   _actor: Bench,
   input: EditPin & PinPlace,
-  _now: Date,
+  now: Date,
 ): Promise<Outcome<PinView>> {
-  const open = await openPhoto(db, input.photo);
+  const open = await openPhoto(db, input.photo, now);
   if (!open.ok) return open;
   const photo = open.value;
   const what = await standsFor(db, photo, input);
@@ -99,9 +99,9 @@ export async function removePin(
   db: Queryable,
   _actor: Bench,
   input: PinPlace,
-  _now: Date,
+  now: Date,
 ): Promise<Outcome<null>> {
-  const open = await openPhoto(db, input.photo);
+  const open = await openPhoto(db, input.photo, now);
   if (!open.ok) return open;
   const photo = open.value;
   const [result] = await db

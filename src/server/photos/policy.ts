@@ -26,19 +26,20 @@ export function refuseView(actor: Actor | null, photo: PhotoGuard | null): Refus
 
 /**
  * Photos of a closed ticket stay as they are: they tell how the instrument left. Null where they may be changed, as
- * those of a board file always may. In a transaction the ticket is not closed before that ends.
+ * those of a board file always may; what is dated before the closing belongs to the time before. In a transaction the
+ * ticket is not closed before that ends.
  */
 export async function refuseClosed(
   db: Queryable,
   { ticketId }: { ticketId: number | null },
+  now: Date,
 ): Promise<Refusal | null> {
   if (ticketId === null) return null;
   const [ticket] = await db
-    .select({ stage: tickets.stage })
+    .select({ stage: tickets.stage, closedAt: tickets.closedAt })
     .from(tickets)
     .where(eq(tickets.id, ticketId))
     .for('update');
-  return ticket && isClosed(ticket.stage)
-    ? refuse('conflict', 'The ticket is closed: its photos stay as they are.')
-    : null;
+  const closed = ticket && isClosed(ticket.stage) && !(ticket.closedAt && now < ticket.closedAt);
+  return closed ? refuse('conflict', 'The ticket is closed: its photos stay as they are.') : null;
 }
