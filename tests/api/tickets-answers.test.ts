@@ -160,6 +160,19 @@ describe('messages', () => {
     expect(await shop.db.select().from(messages)).toEqual(first);
   });
 
+  test('that came after the page was read wait on', async () => {
+    await write('First.');
+    const { counter } = shop.cookies;
+    const page = await (await shop.get(counter, `/tickets/${taken.number}`)).text();
+    const upTo = /name="upTo" value="(\d+)"/.exec(page)?.[1] ?? '';
+    expect(upTo).not.toBe('');
+    await write('Second.');
+    await shop.form(counter, `/tickets/${taken.number}`, { do: 'seen', upTo });
+    expect(await unseen()).toBe(1);
+    await shop.form(counter, `/tickets/${taken.number}`, { do: 'message', body: 'Soon.', upTo });
+    expect(await unseen()).toBe(1);
+  });
+
   test('from the shop are told of by letter, without their words, and answer what was asked', async () => {
     await write('When?');
     const body = 'On Thursday, we think: 48.00 then.';

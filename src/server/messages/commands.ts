@@ -1,5 +1,5 @@
 /** The conversation with the customer, and notes among the staff. */
-import { and, eq, isNull } from 'drizzle-orm';
+import { and, eq, isNull, lte } from 'drizzle-orm';
 import { inTransaction, type Database, type Queryable } from '@/db/client';
 import { customers } from '@/db/schema/shop';
 import { messages, ticketNotes } from '@/db/schema/tickets';
@@ -12,12 +12,18 @@ import type { Shop } from '../tickets/types';
 type Ticket = { id: number; number: string; customerId: number };
 type Written = { id: number; side: 'customer' | 'shop'; author: string; body: string; at: Date };
 
-const markSeen = (tx: Queryable, ticketId: number, now: Date) =>
+/** Marks the customer's messages; `upTo` is the last one that was on the screen: what came later waits on. */
+const markSeen = (tx: Queryable, ticketId: number, upTo: number | undefined, now: Date) =>
   tx
     .update(messages)
     .set({ seenAt: now })
     .where(
-      and(eq(messages.ticketId, ticketId), eq(messages.side, 'customer'), isNull(messages.seenAt)),
+      and(
+        eq(messages.ticketId, ticketId),
+        eq(messages.side, 'customer'),
+        isNull(messages.seenAt),
+        upTo === undefined ? undefined : lte(messages.id, upTo),
+      ),
     );
 
 /** The shop writes; the customer is told by mail (never the text itself: mail is not private). */
@@ -28,6 +34,7 @@ export async function writeToCustomer(
   body: string,
   shop: Shop,
   now: Date,
+  upTo?: number,
 ): Promise<Written> {
   return inTransaction(db, async (tx) => {
     const [made] = await tx
@@ -42,7 +49,7 @@ export async function writeToCustomer(
       })
       .$returningId();
     if (!made) throw new Error('The message was not written.');
-    await markSeen(tx, ticket.id, now);
+    await markSeen(tx, ticket.id, upTo, now);
     await leaveEvent(
       tx,
       ticket.id,
@@ -103,9 +110,10 @@ export async function seeMessages(
   db: Database,
   _actor: Granted<'ticket.message'>,
   ticketId: number,
+  upTo: number | undefined,
   now: Date,
 ): Promise<void> {
-  await markSeen(db, ticketId, now);
+  await markSeen(db, ticketId, upTo, now);
 }
 
 export async function writeNote(

@@ -15,6 +15,8 @@ import { assign, takeStep, tickCaution } from './commands';
 import { ticketByNumber, type TicketFull } from './queries';
 
 const version = z.coerce.number().int().positive();
+/** The last message that was on the screen. */
+const upTo = z.coerce.number().int().positive().optional();
 const Form = z.discriminatedUnion('do', [
   z.object({
     do: z.literal('step'),
@@ -34,8 +36,8 @@ const Form = z.discriminatedUnion('do', [
     version,
     person: z.union([z.literal('').transform(() => null), z.coerce.number().int().positive()]),
   }),
-  z.object({ do: z.literal('message'), body: prose(4000, 1) }),
-  z.object({ do: z.literal('seen') }),
+  z.object({ do: z.literal('message'), body: prose(4000, 1), upTo }),
+  z.object({ do: z.literal('seen'), upTo }),
   z.object({ do: z.literal('note'), note: prose(4000, 1) }),
 ]);
 type Asked = z.output<typeof Form>;
@@ -92,10 +94,21 @@ async function act(
     case 'message':
       return {
         ok: true,
-        value: await writeToCustomer(db, may<'ticket.message'>(), ticket, asked.body, shop, now),
+        value: await writeToCustomer(
+          db,
+          may<'ticket.message'>(),
+          ticket,
+          asked.body,
+          shop,
+          now,
+          asked.upTo,
+        ),
       };
     case 'seen':
-      return { ok: true, value: await seeMessages(db, may<'ticket.message'>(), ticket.id, now) };
+      return {
+        ok: true,
+        value: await seeMessages(db, may<'ticket.message'>(), ticket.id, asked.upTo, now),
+      };
     case 'note':
       return {
         ok: true,
