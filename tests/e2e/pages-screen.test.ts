@@ -37,21 +37,21 @@ afterAll(async () => {
 });
 
 /** The whole page, asked for without the browser's long work on a small file. */
-async function picture(page: Page, name: string) {
+async function picture(page: Page, name: string, width: number, theme: 'light' | 'dark') {
   const session = await page.context().newCDPSession(page);
   const size = await page.evaluate(async () => {
     // What was asked of the page last is on the screen two frames later.
     await new Promise((drawn) => requestAnimationFrame(() => requestAnimationFrame(drawn)));
-    const { clientWidth: width, scrollHeight: height } = document.documentElement;
-    return { width, height };
+    return { width: innerWidth, height: document.documentElement.scrollHeight };
   });
+  expect(size.width).toBe(width);
   const { data } = await session.send('Page.captureScreenshot', {
     format: 'png',
     captureBeyondViewport: true,
     optimizeForSpeed: true,
     clip: { x: 0, y: 0, ...size, scale: 1 },
   });
-  await writeFile(`${screens}/${name}.png`, data, 'base64');
+  await writeFile(`${screens}/${name}-${width}-${theme}.png`, data, 'base64');
   await session.detach();
 }
 
@@ -71,17 +71,17 @@ describe.concurrent('looked at', () => {
     found['lacks'] = await lacks(page);
     found['sticks out at 1280'] = await sticksOut(page);
     found['barriers, wide and light'] = await barriers(page);
-    await picture(page, `${name}-1280-light`);
+    await picture(page, name, 1280, 'light');
     await page.emulateMedia({ colorScheme: 'dark' });
     // The theme changes colours alone.
     found['contrast, wide and dark'] = await barriers(page, 'contrast');
-    await picture(page, `${name}-1280-dark`);
+    await picture(page, name, 1280, 'dark');
     await page.setViewportSize({ width: 360, height: 900 });
     found['sticks out at 360'] = await sticksOut(page);
     found['barriers, narrow'] = await barriers(page, 'all but contrast');
-    await picture(page, `${name}-360-dark`);
+    await picture(page, name, 360, 'dark');
     await page.emulateMedia({ colorScheme: 'light' });
-    await picture(page, `${name}-360-light`);
+    await picture(page, name, 360, 'light');
     if (status !== 404)
       titles.set(await page.title(), (titles.get(await page.title()) ?? new Set()).add(pattern));
     const { said, left } = browser.heard(page);
