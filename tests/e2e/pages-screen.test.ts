@@ -2,7 +2,7 @@
  * Every page of the app on the demo shop, wide and narrow, light and dark: no barrier, nothing over the edge, not a word
  * on the console, no request that leaves the machine. Pictures of all of them are left under tests/.output/screens.
  */
-import { mkdirSync } from 'node:fs';
+import { mkdirSync, rmSync } from 'node:fs';
 import { writeFile } from 'node:fs/promises';
 import type { Page } from 'playwright';
 import { afterAll, beforeAll, describe, expect, test, vi } from 'vitest';
@@ -26,6 +26,8 @@ let shop: DemoShop;
 let browser: WatchedBrowser;
 let open: Opener;
 beforeAll(async () => {
+  // None of an earlier run stays among them.
+  rmSync(screens, { recursive: true, force: true });
   mkdirSync(screens, { recursive: true });
   shop = await startDemoShop();
   browser = await openWatchedBrowser();
